@@ -1,0 +1,274 @@
+// SPDX-License-Identifier: MIT
+#include "diagnostics/summary.hpp"
+
+#include <fmt/format.h>
+
+#include <algorithm>
+#include <cmath>
+
+#include "diagnostics/ledger.hpp"
+#include "diagnostics/theory.hpp"
+
+namespace spokewright {
+namespace {
+
+// "None" beside the field-free space-charge-limited current: a smooth bore 3 % beyond Hull cutoff stays below 1 %.
+constexpr double kNoCurrentShare = 0.01;
+// Spokes show when they beat the shot noise of the thousand or so macro-electrons beyond mid-gap (3 %).
+constexpr double kSpokeShare = 0.05;
+// A ledger that is open by more than this is worth a word; the model's own trial closed to 0.2 %.
+constexpr double kImbalanceWarning = 0.01;
+// A mode that doubles its energy between neighbouring sixths and is above 1 % of the anode voltage is still starting.
+constexpr double kGrowth = 2;
+constexpr double kGrowthShare = 0.01;
+
+/// Rows [first, last) of the last stretch of constant, non-zero programme.
+struct FlatTop {
+    std::size_t first;
+    std::size_t last;
+};
+
+FlatTop flat_top(const Deck& deck, const std::vector<double>& time_ns) {
+    const auto row_at = [&](double time) {  // first row at or after `time`
+        const auto row = std::lower_bound(time_ns.begin(), time_ns.end(), time * 1e9 * (1 - 1e-12));
+        return static_cast<std::size_t>(row - time_ns.begin());
+    };
+    const auto& points = deck.supply.programme;
+    if (points.empty()) return {0, time_ns.size()};
+    if (points.back().share > 0) {
+        std::size_t start = points.size() - 1;
+        while (start > 0 && points[start - 1].share == points.back().share) --start;
+        return {row_at(start == 0 ? 0.0 : points[start].time), time_ns.size()};
+    }
+    for (std::size_t end = points.size() - 1; end > 0; --end) {
+        if (points[end].share == 0 || points[end].share != points[end - 1].share) continue;
+        return {row_at(points[end - 1].time), std::min(row_at(points[end].time), time_ns.size())};
+    }
+    return {time_ns.size(), time_ns.size()};
+}
+
+class Summariser {
+public:
+    Summariser(const Deck& deck, const Record& record, const RunFacts& facts)
+        : deck_(deck),
+          record_(record),
+          facts_(facts),
+          time_ns_(record.column("time_ns")),
+          flat_(flat_top(deck, time_ns_)) {}
+
+    Summary run(const WallBooks& books);
+
+private:
+    void find_modes();
+    void settle();
+    void take_means();
+    void describe_modes();
+    void describe_spokes();
+    void balance();
+    void describe_heat(const WallBook& anode);
+    std::string judge_status() const;
+    const ModeEntry* growing_mode() const;
+    void add_warnings();
+
+    double threshold(const ModeEntry& mode) const {
+        return hartree_voltage(mean_field(deck_), deck_.tube.cathode_radius, deck_.tube.anode_radius, mode.number,
+                               mode.frequency);
+    }
+    std::span<const double> averaged(const std::vector<double>& column) const {
+        return std::span(column).subspan(s_.averaged_from, s_.averaged_to - s_.averaged_from);
+    }
+    MeanWithError mean(const char* name) const { return batch_mean(averaged(record_.column(name))); }
+
+    const Deck& deck_;
+    const Record& record_;
+    const RunFacts& facts_;
+    const std::vector<double>& time_ns_;
+    FlatTop flat_;
+    Settling settling_;
+    Summary s_;
+};
+
+void Summariser::find_modes() {
+    s_.mode_events = watch_modes(deck_, record_, true).events();
+    for (const ModeEvent& event : s_.mode_events) {
+        const bool within = flat_.last > 0 && event.time_ns <= time_ns_[flat_.last - 1];
+        if (within) s_.dominant_mode = event.to;
+    }
+    s_.pi_mode = s_.dominant_mode > 0 && 2 * s_.dominant_mode == deck_.tube.vane_count;
+}
+
+void Summariser::settle() {
+    std::size_t last_event = 0;
+    for (const ModeEvent& event : s_.mode_events) {
+        const auto row = static_cast<std::size_t>(std::lower_bound(time_ns_.begin(), time_ns_.end(), event.time_ns) -
+                                                  time_ns_.begin());
+        if (event.kind != "mode skip" && row < flat_.last) last_event = row;
+    }
+    const auto until = [&](const std::vector<double>& column) { return std::span(column).first(flat_.last); };
+    std::span<const double> energy;
+    if (s_.dominant_mode > 0) energy = until(record_.mode_column(s_.dominant_mode, "energy_J"));
+    settling_ = judge_settling(until(record_.column("anode_current_A")), energy, flat_.first, last_event);
+    s_.averaged_from = settling_.kept_from;
+    s_.averaged_to = std::max(flat_.last, settling_.kept_from);
+    if (s_.averaged_from >= s_.averaged_to) return;
+    s_.averaged_from_ns = time_ns_[s_.averaged_from];
+    s_.averaged_to_ns = time_ns_[s_.averaged_to - 1];
+}
+
+void Summariser::take_means() {
+    s_.anode_voltage_V = mean("anode_voltage_V");
+    s_.anode_current_A = mean("anode_current_A");
+    s_.emitted_current_A = mean("emitted_current_A");
+    s_.cathode_return_current_A = mean("cathode_return_current_A");
+    s_.input_power_W = mean("input_power_W");
+    s_.rf_power_W = mean("mode_power_W");
+    s_.load_power_W = mean("load_power_W");
+    s_.wall_loss_W = mean("wall_loss_W");
+    s_.anode_heat_W = mean("anode_heat_W");
+    s_.cathode_heat_W = mean("cathode_heat_W");
+    s_.hub_radius_mm = mean("hub_radius_mm");
+    const auto input = averaged(record_.column("input_power_W"));
+    s_.electronic_efficiency = batch_ratio(averaged(record_.column("mode_power_W")), input);
+    s_.total_efficiency = batch_ratio(averaged(record_.column("load_power_W")), input);
+}
+
+void Summariser::describe_modes() {
+    for (const ModeEntry& mode : deck_.circuit.modes) {
+        const auto quantity = [&](const char* name) {
+            return batch_mean(averaged(record_.mode_column(mode.number, name)));
+        };
+        s_.modes.push_back({mode.number, mode.frequency * 1e-9, threshold(mode), quantity("voltage_V"),
+                            quantity("backward_V"), quantity("energy_J")});
+        const bool pi = 2 * mode.number == deck_.tube.vane_count;
+        if (mode.number == s_.dominant_mode || (s_.dominant_mode == 0 && pi)) s_.hartree_voltage_V = threshold(mode);
+        if (mode.number != s_.dominant_mode) continue;
+        s_.frequency_GHz = quantity("frequency_GHz");
+        s_.frequency_shift_MHz = {(s_.frequency_GHz.mean - mode.frequency * 1e-9) * 1e3,
+                                  s_.frequency_GHz.half_width * 1e3};
+    }
+}
+
+void Summariser::describe_spokes() {
+    const auto harmonic = [&](int m) { return averaged(record_.column(fmt::format("charge_harmonic_{}_C", m))); };
+    double most = 0;
+    int strongest = 0;
+    for (int m = 1; m <= record_.charge_harmonics(); ++m) {
+        double squares = 0;
+        for (const double amplitude : harmonic(m)) squares += amplitude * amplitude;
+        if (squares <= most) continue;
+        most = squares;
+        strongest = m;
+    }
+    if (strongest == 0) return;
+    const MeanWithError strength = batch_ratio(harmonic(strongest), harmonic(0));
+    if (!(strength.mean >= kSpokeShare)) return;
+    s_.spoke_count = strongest;
+    s_.spoke_strength = strength;
+}
+
+void Summariser::balance() {
+    s_.charge_imbalance_C = charge_imbalance(record_, facts_.macro_weight * kElementaryCharge);
+    if (record_.samples() == 0) return;
+    s_.energy_imbalance = energy_balance(record_).imbalance();
+    if (s_.averaged_to < s_.averaged_from + 2) return;
+    const double window = energy_balance(record_, s_.averaged_from, s_.averaged_to - 1).imbalance();
+    s_.energy_imbalance = std::max(s_.energy_imbalance, window);
+}
+
+void Summariser::describe_heat(const WallBook& anode) {
+    const auto vanes = static_cast<std::size_t>(deck_.tube.vane_count);
+    if (vanes == 0 || anode.sector_energy.size() != 2 * vanes) return;
+    std::int64_t total = 0;
+    std::int64_t most = 0;
+    for (std::size_t sector = 0; sector < anode.sector_energy.size(); ++sector) {
+        total += anode.sector_energy[sector];
+        if (sector % 2 == 1 || anode.sector_energy[sector] <= most) continue;  // slots follow their vanes
+        most = anode.sector_energy[sector];
+        s_.hottest_vane = static_cast<int>(sector / 2);
+    }
+    if (total > 0) s_.hottest_vane_share = static_cast<double>(most) / static_cast<double>(total);
+}
+
+const ModeEntry* Summariser::growing_mode() const {
+    const std::size_t sixth = (flat_.last - flat_.first) / 6;
+    if (sixth == 0) return nullptr;
+    for (const ModeEntry& mode : deck_.circuit.modes) {
+        const auto energy = std::span(record_.mode_column(mode.number, "energy_J")).first(flat_.last);
+        double late = 0;
+        double before = 0;
+        for (const double value : energy.last(sixth)) late += value;
+        for (const double value : energy.last(2 * sixth).first(sixth)) before += value;
+        const double voltage = record_.mode_column(mode.number, "voltage_V")[flat_.last - 1];
+        if (late > kGrowth * before && voltage > kGrowthShare * deck_.supply.anode_voltage) return &mode;
+    }
+    return nullptr;
+}
+
+std::string Summariser::judge_status() const {
+    if (flat_.first >= flat_.last) return "not settled";
+    if (s_.dominant_mode > 0) return settling_.settled ? "settled" : "not settled";
+    const double voltage = deck_.supply.anode_voltage;
+    bool hopeless = voltage < s_.hull_voltage_V;
+    for (const ModeEntry& mode : deck_.circuit.modes) hopeless = hopeless && voltage < threshold(mode);
+    const double free_current =
+        deck_.tube.axial_height *
+        space_charge_limited_current_per_length(voltage, deck_.tube.cathode_radius, deck_.tube.anode_radius);
+    if (hopeless && std::abs(s_.anode_current_A.mean) < kNoCurrentShare * free_current) return "cut off";
+    if (deck_.circuit.modes.empty()) return settling_.settled ? "settled" : "not settled";
+    return facts_.interrupted || growing_mode() != nullptr ? "not settled" : "no oscillation";
+}
+
+void Summariser::add_warnings() {
+    s_.warnings = facts_.warnings;
+    if (facts_.interrupted) {
+        s_.warnings.push_back(fmt::format("stopped at {:.1f} of {:.1f} ns; continue with --resume", s_.end_time_ns,
+                                          deck_.clock.end_time * 1e9));
+    }
+    if (s_.status == "not settled" && !settling_.reason.empty())
+        s_.warnings.push_back("not settled: " + settling_.reason);
+    if (s_.dominant_mode == 0 && flat_.first < flat_.last) {
+        if (const ModeEntry* mode = growing_mode()) {
+            s_.warnings.push_back(fmt::format("mode {} is still growing: lengthen clock.end_time_ns", mode->number));
+        }
+    }
+    if (s_.energy_imbalance > kImbalanceWarning) {
+        s_.warnings.push_back(
+            fmt::format("the energy ledger is open by {:.2g} %: lower clock.step_ps or raise "
+                        "electrons.target_count",
+                        100 * s_.energy_imbalance));
+    }
+    if (s_.charge_imbalance_C > 0) {
+        s_.warnings.push_back("the charge books disagree: this is a fault of the program, please report it");
+    }
+}
+
+Summary Summariser::run(const WallBooks& books) {
+    s_.version = facts_.version;
+    s_.deck_sha256 = deck_.sha256;
+    s_.seed = deck_.electrons.seed;
+    s_.end_time_ns = time_ns_.empty() ? 0 : time_ns_.back();
+    s_.hull_voltage_V = hull_voltage(mean_field(deck_), deck_.tube.cathode_radius, deck_.tube.anode_radius);
+    s_.electrons = time_ns_.empty() ? 0 : record_.last("electrons");
+    s_.steps = facts_.steps;
+    s_.wall_clock_s = facts_.wall_clock;
+    s_.ns_per_electron_step = facts_.ns_per_electron_step;
+    find_modes();
+    settle();
+    take_means();
+    describe_modes();
+    describe_spokes();
+    balance();
+    describe_heat(books.anode);
+    s_.status = judge_status();
+    if (s_.status == "settled") s_.settled_from_ns = s_.averaged_from_ns;
+    add_warnings();
+    return std::move(s_);
+}
+
+}  // namespace
+
+Summary summarise(const Deck& deck, const Record& record, const WallBooks& books, const RunFacts& facts) {
+    return Summariser(deck, record, facts).run(books);
+}
+
+}  // namespace spokewright
