@@ -185,7 +185,7 @@ void Hdf5File::commit() {
         throw FileError(fmt::format("{}: cannot finish the HDF5 file in memory; check the memory left", path_));
     }
     handle_->file.reset();
-    write_whole_file(path_, std::span<const char>(image));
+    write_whole_file(path_, {image.data(), image.size()});
 }
 
 template <typename T>

@@ -16,6 +16,11 @@ double share_of(const ProgressState& state) {
     return state.end_time > 0 ? std::clamp(state.time / state.end_time, 0.0, 1.0) : 1.0;
 }
 
+/// Full parts out of `parts`; a rounding error below a full one does not hold it back.
+int parts_done(const ProgressState& state, int parts) {
+    return static_cast<int>(parts * share_of(state) + 1e-9);
+}
+
 std::string duration_text(double seconds) {
     const auto whole = static_cast<std::int64_t>(std::lround(seconds));
     if (whole >= 3600) return fmt::format("{} h {:02} min", whole / 3600, whole / 60 % 60);
@@ -28,9 +33,8 @@ std::string duration_text(double seconds) {
 std::string progress_text(const ProgressState& state, double seconds_left) {
     const std::string mode = state.leading_mode > 0 ? fmt::format("mode {}", state.leading_mode) : "no mode";
     const std::string left = seconds_left < 0 ? "" : fmt::format("  {} left", duration_text(seconds_left));
-    return fmt::format("{:3.0f} %  {:.1f} of {:.1f} ns  {} electrons  {:.3g} A  {}{}",
-                       std::floor(100 * share_of(state)), state.time * 1e9, state.end_time * 1e9, state.electrons,
-                       state.current, mode, left);
+    return fmt::format("{:3} %  {:.1f} of {:.1f} ns  {} electrons  {:.3g} A  {}{}", parts_done(state, 100),
+                       state.time * 1e9, state.end_time * 1e9, state.electrons, state.current, mode, left);
 }
 
 double Progress::steady_seconds() {
@@ -53,11 +57,11 @@ void Progress::update(const ProgressState& state) {
         start_clock_ = now;
         start_share_ = share;
         last_print_ = now - kTerminalInterval;
-        tenths_printed_ = static_cast<int>(10 * share);
+        tenths_printed_ = parts_done(state, 10);
     }
     if (is_terminal_) {
         if (now - last_print_ < kTerminalInterval) return;
-    } else if (static_cast<int>(10 * share) <= tenths_printed_) {
+    } else if (parts_done(state, 10) <= tenths_printed_) {
         return;
     }
     print(state, now);
@@ -65,7 +69,7 @@ void Progress::update(const ProgressState& state) {
 
 void Progress::finish(const ProgressState& state) {
     if (quiet_) return;
-    const bool already = !is_terminal_ && static_cast<int>(10 * share_of(state)) == 10 && tenths_printed_ == 10;
+    const bool already = !is_terminal_ && parts_done(state, 10) == 10 && tenths_printed_ == 10;
     if (!already) print(state, clock_());
     end_line();
 }
@@ -76,7 +80,7 @@ void Progress::print(const ProgressState& state, double now) {
     const double left = done > 0 ? (now - start_clock_) * (1 - share) / done : -1;
     std::string text = progress_text(state, left);
     last_print_ = now;
-    tenths_printed_ = static_cast<int>(10 * share);
+    tenths_printed_ = parts_done(state, 10);
     if (!is_terminal_) {
         out_ << text << '\n' << std::flush;
         return;

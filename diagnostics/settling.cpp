@@ -51,6 +51,24 @@ double half_width(std::span<const double> means, double centre) {
     return student * std::sqrt(square_sum(means, centre) / (count - 1) / count);
 }
 
+/// The record less its least-squares line: the noise against which a drift is weighed.
+std::vector<double> without_line(std::span<const double> record) {
+    const double centre = mean_of(record);
+    const double middle = 0.5 * static_cast<double>(record.size() - 1);
+    double product = 0;
+    double squares = 0;
+    for (std::size_t k = 0; k < record.size(); ++k) {
+        const double x = static_cast<double>(k) - middle;
+        product += x * record[k];
+        squares += x * x;
+    }
+    std::vector<double> rest(record.begin(), record.end());
+    for (std::size_t k = 0; k < rest.size(); ++k) {
+        rest[k] -= centre + product / squares * (static_cast<double>(k) - middle);
+    }
+    return rest;
+}
+
 struct Trial {
     bool passed;
     std::string reason;
@@ -67,7 +85,7 @@ Trial steady(std::span<const double> kept, const char* name) {
     }
     const std::size_t third = kept.size() / 3;
     const double drift = std::abs(mean_of(kept.last(third)) - mean_of(kept.first(third)));
-    if (!(drift <= std::max(kDriftTolerance * scale, kDriftHalfWidths * estimate.half_width))) {
+    if (!(drift <= std::max(kDriftTolerance * scale, kDriftHalfWidths * batch_mean(without_line(kept)).half_width))) {
         return {false,
                 fmt::format("the {} still drifts, by {:.1f} % from the first to the last third of the part kept: "
                             "lengthen clock.end_time_ns",
@@ -78,7 +96,7 @@ Trial steady(std::span<const double> kept, const char* name) {
 
 }  // namespace
 
-Truncation mser5(std::span<const double> record) {
+Truncation mser5(std::span<const double> record, double negligible) {
     constexpr std::size_t kBatch = 5;
     const std::size_t count = record.size() / kBatch;
     if (count < 4) return {0, false};
@@ -86,21 +104,18 @@ Truncation mser5(std::span<const double> record) {
     const double centre = mean_of(means);  // sums about it lose no digits
     double sum = 0;
     double squares = 0;
-    std::size_t best = 0;
-    double least = std::numeric_limits<double>::infinity();
     const std::size_t last_cut = count / 2;
+    std::vector<double> statistic(last_cut + 1);
     for (std::size_t cut = count; cut-- > 0;) {
         const double value = means[cut] - centre;
         sum += value;
         squares += value * value;
-        if (cut > last_cut) continue;
         const double kept = static_cast<double>(count - cut);
-        const double statistic = (squares - sum * sum / kept) / (kept * kept);
-        if (statistic <= least) {  // of equals the earliest cut, which keeps more
-            least = statistic;
-            best = cut;
-        }
+        if (cut <= last_cut) statistic[cut] = (squares - sum * sum / kept) / (kept * kept);
     }
+    const double least = *std::min_element(statistic.begin(), statistic.end()) + negligible * negligible;
+    const auto first = std::find_if(statistic.begin(), statistic.end(), [&](double value) { return value <= least; });
+    const auto best = static_cast<std::size_t>(first - statistic.begin());
     const std::size_t dropped_in_front = record.size() - count * kBatch;
     return {best == 0 ? 0 : dropped_in_front + best * kBatch, best < last_cut};
 }
@@ -139,9 +154,12 @@ Settling judge_settling(std::span<const double> current, std::span<const double>
                             "clock.end_time_ns or lower clock.sample_every",
                             tail, 2 * kLeastSamples)};
     }
-    Truncation cut = mser5(current.subspan(programme_end));
+    const auto truncate = [&](std::span<const double> column) {
+        return mser5(column.subspan(programme_end), kNegligibleError * std::abs(mean_of(column.subspan(middle))));
+    };
+    Truncation cut = truncate(current);
     if (!mode_energy.empty()) {
-        const Truncation other = mser5(mode_energy.subspan(programme_end));
+        const Truncation other = truncate(mode_energy);
         cut = {std::max(cut.kept_from, other.kept_from), cut.found && other.found};
     }
     const std::size_t kept_from = std::max(programme_end + cut.kept_from, last_event);

@@ -17,12 +17,14 @@ struct MeanWithError {
 
 /// Index of the first sample to keep: the cut that minimises the squared standard error of the mean of what remains,
 /// over batches of 5. Only cuts inside the first half are tried; `found` is false when the best cut is the last one
-/// tried (still falling) or the record is shorter than 20 samples.
+/// tried (still falling) or the record is shorter than 20 samples. Of cuts whose squared standard errors differ by less
+/// than `negligible` squared (in the record's unit) the earliest is taken: the tail of a build-up without noise would
+/// otherwise be cut for ever.
 struct Truncation {
     std::size_t kept_from = 0;
     bool found = false;
 };
-Truncation mser5(std::span<const double> record);
+Truncation mser5(std::span<const double> record, double negligible = 0);
 
 /// Mean over 20 batches, or 10 when neighbouring batches of 20 still hang together. Left-over samples at the front of
 /// the span are dropped. NaN entries are an error of the caller and give NaN.
@@ -36,9 +38,13 @@ MeanWithError batch_ratio(std::span<const double> numerator, std::span<const dou
 /// that a chart must show are of that size (common practice, no source).
 inline constexpr double kHalfWidthTolerance = 0.05;
 /// Drift from the first to the last third of the kept part that is let pass: 2 % of the mean, well inside the above, or
-/// three half-widths (2.6 standard errors of that difference for white noise; a ramp gives five).
+/// three half-widths of what is left without its straight line (2.6 standard errors of that difference for noise
+/// alone).
 inline constexpr double kDriftTolerance = 0.02;
 inline constexpr double kDriftHalfWidths = 3;
+
+/// Standard error, as a share of the mean, that is not worth cutting for: a five-hundredth of the half-width allowed.
+inline constexpr double kNegligibleError = 1e-4;
 
 struct Settling {
     bool settled = false;

@@ -47,12 +47,12 @@ public:
     PartialFile(const PartialFile&) = delete;
     PartialFile& operator=(const PartialFile&) = delete;
 
-    void write(std::span<const char> bytes) {
+    void write(std::string_view bytes) {
         while (!bytes.empty()) {
             const ssize_t written = ::write(descriptor_, bytes.data(), bytes.size());
             if (written < 0 && errno == EINTR) continue;  // a stop signal must not cost the file
             if (written < 0) fail();
-            bytes = bytes.subspan(static_cast<std::size_t>(written));
+            bytes.remove_prefix(static_cast<std::size_t>(written));
         }
     }
 
@@ -89,7 +89,7 @@ void sync_folder(const std::string& path) {
 
 }  // namespace
 
-void write_whole_file(const std::string& path, std::span<const char> bytes) {
+void write_whole_file(const std::string& path, std::string_view bytes) {
     PartialFile file(path);
     file.write(bytes);
     file.put_in_place();

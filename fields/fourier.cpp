@@ -22,7 +22,9 @@ using Plan = std::unique_ptr<std::remove_pointer_t<fftw_plan>, PlanDeleter>;
 // FFTW's planner keeps global tables; only execution is safe from many threads.
 std::mutex planner_mutex;
 
-fftw_complex* raw(std::complex<double>* values) { return reinterpret_cast<fftw_complex*>(values); }
+fftw_complex* raw(std::complex<double>* values) {
+    return reinterpret_cast<fftw_complex*>(values);
+}
 
 // A plan made for aligned arrays may use aligned loads, so an array that is not aligned must not reach it.
 void require_aligned(const void* array) {

@@ -9,7 +9,9 @@
 namespace spokewright {
 namespace {
 
-double* doubles(Poisson::Harmonics& values) { return reinterpret_cast<double*>(values.data()); }
+double* doubles(Poisson::Harmonics& values) {
+    return reinterpret_cast<double*>(values.data());
+}
 
 }  // namespace
 

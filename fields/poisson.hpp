@@ -49,12 +49,12 @@ public:
 private:
     PolarGrid grid_;
     RowFourier fourier_;
-    std::size_t width_;                   // doubles in a row of harmonics
-    std::vector<double> conductance_;     // [n_r]
-    AlignedVector<double> pivot_;         // [n_r + 1][width_], each harmonic twice: real and imaginary part
-    AlignedVector<double> laplace_;       // [n_r + 1][width_]
-    Harmonics charge_;                    // [n_r + 1][harmonics]
-    Harmonics wall_charge_;               // [harmonics]
+    std::size_t width_;                // doubles in a row of harmonics
+    std::vector<double> conductance_;  // [n_r]
+    AlignedVector<double> pivot_;      // [n_r + 1][width_], each harmonic twice: real and imaginary part
+    AlignedVector<double> laplace_;    // [n_r + 1][width_]
+    Harmonics charge_;                 // [n_r + 1][harmonics]
+    Harmonics wall_charge_;            // [harmonics]
 };
 
 }  // namespace spokewright

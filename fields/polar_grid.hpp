@@ -24,7 +24,8 @@ struct PolarGrid {
     std::size_t node(int i, int j) const {
         return static_cast<std::size_t>(i) * static_cast<std::size_t>(n_theta) + static_cast<std::size_t>(j);
     }
-    /// Volume that belongs to one node of row i, m^3; half cells on the electrodes. Exact for the area-weighted deposit.
+    /// Volume that belongs to one node of row i, m^3; half cells on the electrodes. Exact for the area-weighted
+    /// deposit.
     double node_volume(int i) const {
         const double inner = i == 0 ? radius(0) : radius(i - 1);
         const double outer = i == n_r ? radius(n_r) : radius(i + 1);

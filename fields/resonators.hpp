@@ -21,13 +21,13 @@ std::complex<double> load_admittance(const LoadSettings& load);
 
 struct Resonator {
     VanePattern pattern;
-    std::size_t entry;           // index of its mode in CircuitSettings::modes
-    double capacitance;          // F, C_k
-    double wall_conductance;     // S, omega C / Q_0
-    double load_conductance;     // S, omega C Re(y) / Q_ext
-    double inverse_inductance;   // 1/H, prewarped, the load's susceptance included
-    double voltage = 0;          // V, v_k
-    double current = 0;          // A, i_k
+    std::size_t entry;          // index of its mode in CircuitSettings::modes
+    double capacitance;         // F, C_k
+    double wall_conductance;    // S, omega C / Q_0
+    double load_conductance;    // S, omega C Re(y) / Q_ext
+    double inverse_inductance;  // 1/H, prewarped, the load's susceptance included
+    double voltage = 0;         // V, v_k
+    double current = 0;         // A, i_k
 
     /// v + j i / (omega C): turns as exp(j omega t) when the circuit rings.
     std::complex<double> amplitude() const;

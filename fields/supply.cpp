@@ -14,7 +14,8 @@ Supply::Supply(const SupplySettings& settings, double tube_capacitance, double d
 
 double Supply::programme_voltage(double time) const {
     const auto& points = settings_.programme;
-    const auto next = std::find_if(points.begin(), points.end(), [&](const ProgrammePoint& p) { return p.time > time; });
+    const auto next =
+        std::find_if(points.begin(), points.end(), [&](const ProgrammePoint& p) { return p.time > time; });
     double share = 0;
     if (next == points.begin()) {
         share = points.front().share;

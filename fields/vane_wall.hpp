@@ -14,7 +14,7 @@ enum class Standing { cosine, sine, alternating };  // alternating: the pi mode,
 
 /// One resonator's pattern: unit amplitude on the vanes.
 struct VanePattern {
-    int mode;                   // n
+    int mode;  // n
     Standing standing;
     std::vector<double> vanes;  // [N] vane values
 };

@@ -43,8 +43,7 @@ void Cathode::emit(std::int64_t step, const SurfaceField& surface, double magnet
             continue;
         }
         const auto place = static_cast<std::uint32_t>(j);
-        const std::int64_t count =
-            round_at_random(wanted, random_.uniform(step, Draw::emission_count, place, 0)[0]);
+        const std::int64_t count = round_at_random(wanted, random_.uniform(step, Draw::emission_count, place, 0)[0]);
         for (std::int64_t k = 0; k < count; ++k) {
             const auto index = static_cast<std::uint32_t>(k);
             const auto where = random_.uniform(step, Draw::emission_state, place, index);
@@ -58,8 +57,8 @@ void Cathode::emit(std::int64_t step, const SurfaceField& surface, double magnet
     }
 }
 
-void Cathode::emit_secondaries(std::int64_t step, const SurfaceField& surface,
-                               std::span<const CathodeImpact> impacts, ElectronStore& store) {
+void Cathode::emit_secondaries(std::int64_t step, const SurfaceField& surface, std::span<const CathodeImpact> impacts,
+                               ElectronStore& store) {
     const SecondarySurface law{settings_.secondary_yield_max, settings_.secondary_energy_max,
                                settings_.secondary_roughness};
     for (std::size_t hit = 0; hit < impacts.size(); ++hit) {
@@ -103,8 +102,8 @@ void Cathode::launch(std::int32_t theta, std::size_t node, double temperature_eV
                               std::cos(2 * kPi * static_cast<double>(random[2]));
     energy_eV_ += units_.energy_eV(normal * normal + tangential * tangential);
 
-    const double flown = 1 - instant;       // share of the step after the launch: where r stands at n + 1
-    const double carried = flown - 0.5;     // and from the launch to n + 1/2, where u stands
+    const double flown = 1 - instant;    // share of the step after the launch: where r stands at n + 1
+    const double carried = flown - 0.5;  // and from the launch to n + 1/2, where u stands
     const double kick = units_.half_kick(surface.surface_share() * surface.first_cell()[node]);
     const double rise_to_u = normal * carried + kick * carried * carried;
     const double rise = normal * flown + kick * flown * flown;

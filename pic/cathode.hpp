@@ -44,9 +44,9 @@ private:
     CathodeSettings settings_;
     StepUnits units_;
     CounterRandom random_;
-    double macro_charge_;                     // C, negative
-    double turn_ = 0;                         // gyration angle of the step at the cathode, rad
-    std::vector<double> secondaries_at_node_; // [n_theta], of the last call
+    double macro_charge_;                      // C, negative
+    double turn_ = 0;                          // gyration angle of the step at the cathode, rad
+    std::vector<double> secondaries_at_node_;  // [n_theta], of the last call
     std::int64_t primaries_ = 0;
     std::int64_t secondaries_ = 0;
     double energy_eV_ = 0;

@@ -18,8 +18,8 @@ inline AlignedVector<float> radial_bend(const StepUnits& units) {
 }
 
 struct CellShare {
-    std::int32_t i, j;       // cell
-    float radial, azimuthal; // shares of the outer and of the next node, 0..1
+    std::int32_t i, j;        // cell
+    float radial, azimuthal;  // shares of the outer and of the next node, 0..1
 };
 
 inline CellShare cell_share(std::int32_t r, std::int32_t theta, const float* bend) {

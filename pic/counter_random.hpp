@@ -10,7 +10,14 @@
 
 namespace spokewright {
 
-enum class Draw : std::uint32_t { emission_count, emission_state, emission_velocity, secondary_count, secondary_state, secondary_velocity };
+enum class Draw : std::uint32_t {
+    emission_count,
+    emission_state,
+    emission_velocity,
+    secondary_count,
+    secondary_state,
+    secondary_velocity
+};
 
 class CounterRandom {
 public:

@@ -15,7 +15,8 @@
 
 namespace spokewright {
 
-/// Bilinear coefficients of one cell: kick = value + d_i s + d_j t + d_ij s t, s the radial area share, t the azimuthal.
+/// Bilinear coefficients of one cell: kick = value + d_i s + d_j t + d_ij s t, s the radial area share, t the
+/// azimuthal.
 struct alignas(32) CellForce {
     float r_value, r_i, r_j, r_ij;
     float theta_value, theta_i, theta_j, theta_ij;

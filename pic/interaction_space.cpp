@@ -55,15 +55,15 @@ const Tally& InteractionSpace::step() {
     ++tally_.step;
     tally_.time = time();
 
-    push_.advance(store_, force_);               // u to n + 1/2, r to n + 1
+    push_.advance(store_, force_);  // u to n + 1/2, r to n + 1
     walls_.strike(store_, push_.hits());
     store_.remove(push_.hits());
     // into the step n -> n + 1, by the surface field of n
     cathode_.emit(number, surface_, magnet_.field().front(), walls_.impacts(), store_);
-    scatter_.deposit(store_);                    // charge at n + 1
+    scatter_.deposit(store_);  // charge at n + 1
     poisson_.transform(scatter_.node_charge());
-    advance_circuit();                           // vane and anode voltages at n + 1
-    solve_field();                               // potential, field and force at n + 1
+    advance_circuit();  // vane and anode voltages at n + 1
+    solve_field();      // potential, field and force at n + 1
     if (deck_.magnet.self_field && tally_.step % kSelfFieldEvery == 0) {
         update_self_field();
     }

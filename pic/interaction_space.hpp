@@ -49,9 +49,11 @@ public:
     void restore(const SpaceState& state);
 
     const StepUnits& units() const { return units_; }
-    double macro_charge() const { return macro_charge_; }      // C, negative
+    double macro_charge() const { return macro_charge_; }  // C, negative
     double macro_weight() const { return macro_charge_ / -kElementaryCharge; }
     double time() const { return static_cast<double>(tally_.step) * units_.dt; }
+    const Tally& tally() const { return tally_; }
+    /// No field, voltage or momentum has gone non-finite.
     bool finite() const;
     Resonators& resonators() { return resonators_; }
 

@@ -66,7 +66,8 @@ void Push::advance_range(ElectronStore& store, const ForceTable& force, std::siz
         const float half_tangent = y / (x + std::sqrt(x * x + y * y));  // tan of half the angle swept
         const float rise = std::clamp(u_r * inverse_gamma + y * half_tangent, -longest, longest);
         const std::int32_t r = store.r[p] + static_cast<std::int32_t>(std::lrint(rise * kRadialOne));
-        std::int32_t theta = store.theta[p] + static_cast<std::int32_t>(std::lrint(theta_scale * short_arctan(half_tangent)));
+        std::int32_t theta =
+            store.theta[p] + static_cast<std::int32_t>(std::lrint(theta_scale * short_arctan(half_tangent)));
         theta += theta < 0 ? turn_end : 0;
         theta -= theta >= turn_end ? turn_end : 0;
 

@@ -1,6 +1,7 @@
 // SPDX-License-Identifier: MIT
-// One leapfrog step of every electron: gather, relativistic Boris rotation, move. J. P. Boris, Proc. 4th Conf. on Numerical
-// Simulation of Plasmas (1970); C. K. Birdsall & A. B. Langdon, Plasma Physics via Computer Simulation (1985), ch. 4.
+// One leapfrog step of every electron: gather, relativistic Boris rotation, move. J. P. Boris, Proc. 4th Conf. on
+// Numerical Simulation of Plasmas (1970); C. K. Birdsall & A. B. Langdon, Plasma Physics via Computer Simulation
+// (1985), ch. 4.
 #pragma once
 
 #include <span>

@@ -1,6 +1,7 @@
 // SPDX-License-Identifier: MIT
 // The electrons' own units: lengths in radial cells (dr), times in steps (dt), angles in azimuthal cells (dtheta).
-// Positions are fixed point: 24 fraction bits in r, 22 in theta, so that cell, fraction and wrap are integer operations.
+// Positions are fixed point: 24 fraction bits in r, 22 in theta, so that cell, fraction and wrap are integer
+// operations.
 #pragma once
 
 #include <cmath>
@@ -22,13 +23,11 @@ struct StepUnits {
     PolarGrid grid;
     double dt;  // s
 
-    double speed() const { return grid.dr() / dt; }                       // m/s in one velocity unit
-    double light() const { return kLightSpeed / speed(); }                // c in velocity units
+    double speed() const { return grid.dr() / dt; }                           // m/s in one velocity unit
+    double light() const { return kLightSpeed / speed(); }                    // c in velocity units
     double cathode_cells() const { return grid.cathode_radius / grid.dr(); }  // r_c in cells
     /// Half-step electric kick of gamma v, velocity units, for a field in V/m.
-    double half_kick(double field) const {
-        return -kElementaryCharge / kElectronMass * field * 0.5 * dt / speed();
-    }
+    double half_kick(double field) const { return -kElementaryCharge / kElectronMass * field * 0.5 * dt / speed(); }
     /// Tangent of half the gyration angle in one step at gamma = 1, for a field in T. Negative for B > 0: q = -e.
     double half_turn(double field) const { return -kElementaryCharge / kElectronMass * field * 0.5 * dt; }
     /// Kinetic energy in eV of a squared gamma v given in velocity units.

@@ -76,8 +76,8 @@ void Walls::strike(const ElectronStore& store, std::span<const std::uint32_t> hi
         if (electron.r <= 0) {
             book(books_.cathode, node, energy, units);
             cathode_units_ += units;
-            impacts_.push_back({theta, static_cast<float>(energy),
-                                static_cast<float>(std::atan2(std::abs(u_theta), std::abs(u_r)))});
+            impacts_.push_back(
+                {theta, static_cast<float>(energy), static_cast<float>(std::atan2(std::abs(u_theta), std::abs(u_r)))});
         } else {
             book(books_.anode, anode_sector(theta), energy, units);
             anode_units_ += units;

@@ -35,11 +35,12 @@ inline Deck played_deck() {
 struct PlayedRun {
     Deck deck = played_deck();
     std::function<double(double)> current = [](double) { return 1.5; };  // A, induced
-    std::vector<std::function<double(double)>> mode_voltage = {[](double) { return 10.0; }, [](double) { return 2000.0; }};
+    std::vector<std::function<double(double)>> mode_voltage = {[](double) { return 10.0; },
+                                                               [](double) { return 2000.0; }};
     std::vector<double> mode_frequency = {2.80e9, 2.449e9};  // Hz, as it runs
     int spokes = 5;
-    double bunching = 0.4;        // |Q_m| / Q_0
-    double lost_energy = 0;       // share of the input that vanishes from the books
+    double bunching = 0.4;   // |Q_m| / Q_0
+    double lost_energy = 0;  // share of the input that vanishes from the books
     std::int64_t stray_electrons = 0;
     double macro_charge = -1e-14;  // C
 

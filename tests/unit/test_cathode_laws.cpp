@@ -1,6 +1,6 @@
 // SPDX-License-Identifier: MIT
-// Sources: S. Dushman & J. W. Ewald, Phys. Rev. 29, 857 (1927); W. Schottky (1914); J. R. M. Vaughan, IEEE Trans. Electron
-// Devices 36, 1963 (1989) and 40, 830 (1993).
+// Sources: S. Dushman & J. W. Ewald, Phys. Rev. 29, 857 (1927); W. Schottky (1914); J. R. M. Vaughan, IEEE Trans.
+// Electron Devices 36, 1963 (1989) and 40, 830 (1993).
 #include <doctest/doctest.h>
 
 #include <cmath>

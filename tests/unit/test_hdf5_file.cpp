@@ -2,9 +2,9 @@
 #include <doctest/doctest.h>
 
 #include <cmath>
-#include <initializer_list>
 #include <filesystem>
 #include <fstream>
+#include <initializer_list>
 #include <limits>
 #include <numeric>
 
@@ -111,8 +111,11 @@ TEST_CASE("without commit nothing appears, and an old file stands") {
 TEST_CASE("a missing folder is an error before anything is computed for it") {
     const ScratchFolder folder;
     const std::string path = folder.file("no/x.h5");
-    CHECK_THROWS_WITH_AS(Hdf5File::create(path), (path + ": cannot write: No such file or directory; choose a folder that "
-                                                         "exists and that you may write to").c_str(), FileError);
+    CHECK_THROWS_WITH_AS(Hdf5File::create(path),
+                         (path + ": cannot write: No such file or directory; choose a folder that "
+                                 "exists and that you may write to")
+                             .c_str(),
+                         FileError);
 }
 
 TEST_CASE("missing, foreign and truncated files are told apart from good ones") {
@@ -124,8 +127,8 @@ TEST_CASE("missing, foreign and truncated files are told apart from good ones") 
     CHECK(message_of(path) == "");
     for (const double share : {0.9, 0.5, 0.1}) {
         written_file(folder);
-        std::filesystem::resize_file(path, static_cast<std::uintmax_t>(
-                                               share * static_cast<double>(std::filesystem::file_size(path))));
+        std::filesystem::resize_file(
+            path, static_cast<std::uintmax_t>(share * static_cast<double>(std::filesystem::file_size(path))));
         CHECK(message_of(path) == path + ": truncated or not an HDF5 file; remove it and make it again");
     }
 }
@@ -134,7 +137,8 @@ TEST_CASE("one flipped byte among the numbers is noticed") {
     const ScratchFolder folder;
     const std::string path = written_file(folder);
     std::fstream file(path, std::ios::in | std::ios::out | std::ios::binary);
-    const auto middle = static_cast<std::streamoff>(std::filesystem::file_size(path)) - 20000;  // 40 kB of numbers end it
+    const auto middle =
+        static_cast<std::streamoff>(std::filesystem::file_size(path)) - 20000;  // 40 kB of numbers end it
     file.seekg(middle);
     const char byte = static_cast<char>(file.get());
     file.seekp(middle);

@@ -3,6 +3,9 @@
 
 #include <cmath>
 #include <initializer_list>
+#include <string>
+#include <utility>
+#include <vector>
 
 #include "diagnostics/ledger.hpp"
 #include "tests/played_run.hpp"
@@ -38,6 +41,27 @@ TEST_CASE("what is stored counts: a change inside a window balances its input") 
     record.restore(columns, record.state());
     CHECK(relative_error(energy_balance(record, 0, 2).stored_change, 9e-9) < 1e-12);
     CHECK(relative_error(energy_balance(record).stored_change, 11e-9) < 1e-12);
+}
+
+TEST_CASE("each term stands on its side of the books") {
+    PlayedRun run;
+    Record record(run.deck);
+    run.play(record, 0.04e-9);  // one row
+    const std::vector<std::pair<std::string, double>> terms = {
+        {"supply_energy_J", 1},        {"prime_energy_J", 10},     {"emission_energy_J", 100}, {"wall_loss_J", 2},
+        {"load_energy_J", 20},         {"anode_energy_J", 200},    {"cathode_energy_J", 2000}, {"kinetic_energy_J", 3},
+        {"space_charge_energy_J", 30}, {"resonator_energy_J", 300}};
+    auto columns = record.columns();
+    for (Column& column : columns) {
+        for (const auto& [name, value] : terms) {
+            if (column.name == name) column.values = {value};
+        }
+    }
+    record.restore(columns, record.state());
+    const EnergyBalance balance = energy_balance(record);
+    CHECK(balance.in == 111);
+    CHECK(balance.out == 2222);
+    CHECK(balance.stored_change == 333);
 }
 
 TEST_CASE("an empty record balances, and a gain from nothing is an infinite fault") {

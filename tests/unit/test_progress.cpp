@@ -10,9 +10,13 @@ using namespace spokewright;
 
 namespace {
 
-ProgressState state_at(double share) { return {share * 150e-9, 150e-9, 20134, 1.6543, 5}; }
+ProgressState state_at(double share) {
+    return {share * 150e-9, 150e-9, 20134, 1.6543, 5};
+}
 
-std::ptrdiff_t count(const std::string& text, char letter) { return std::count(text.begin(), text.end(), letter); }
+std::ptrdiff_t count(const std::string& text, char letter) {
+    return std::count(text.begin(), text.end(), letter);
+}
 
 }  // namespace
 

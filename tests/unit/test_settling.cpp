@@ -1,5 +1,6 @@
 // SPDX-License-Identifier: MIT
-// Sources: K. P. White Jr., Simulation 69, 323 (1997) (MSER-5); A. M. Law, Simulation Modeling and Analysis (batch means).
+// Sources: K. P. White Jr., Simulation 69, 323 (1997) (MSER-5); A. M. Law, Simulation Modeling and Analysis (batch
+// means).
 #include <doctest/doctest.h>
 
 #include <cmath>
@@ -14,8 +15,8 @@ using namespace spokewright;
 
 namespace {
 
-/// First-order autoregressive noise of unit variance, correlation `phi` a sample, about `mean`; Gaussian by G. E. P. Box &
-/// M. E. Muller (1958), so that the numbers do not depend on the library.
+/// First-order autoregressive noise of unit variance, correlation `phi` a sample, about `mean`; Gaussian by G. E. P.
+/// Box & M. E. Muller (1958), so that the numbers do not depend on the library.
 std::vector<double> autoregressive(std::size_t length, double mean, double phi, std::uint64_t seed) {
     std::mt19937_64 engine(seed);
     const auto uniform = [&] { return (static_cast<double>(engine() >> 11) + 0.5) * 0x1p-53; };
@@ -81,6 +82,16 @@ TEST_CASE("MSER-5 keeps all of a constant record, finds nothing in a short one o
     CHECK_FALSE(mser5(ramp).found);
 }
 
+TEST_CASE("the tail of a build-up without noise is not cut for ever") {
+    std::vector<double> record(2000, 10.0);
+    add_transient(record, -10, 50);
+    CHECK_FALSE(mser5(record).found);  // every cut still gains something
+    const Truncation cut = mser5(record, 1e-3);
+    CHECK(cut.found);
+    CHECK(cut.kept_from > 100);
+    CHECK(judge_settling(record, {}, 0, 0).settled);
+}
+
 TEST_CASE("the 95 % interval covers the true mean about 95 times in a hundred") {
     int covered = 0;
     constexpr int kRuns = 400;
@@ -142,7 +153,8 @@ TEST_CASE("what does not settle says why and what to do") {
           "the supply has not reached its final voltage: lengthen clock.end_time_ns");
     CHECK(judge_settling(steady, {}, 3990, 0).reason ==
           "only 10 samples at the final voltage (at least 80): lengthen clock.end_time_ns or lower clock.sample_every");
-    CHECK(judge_settling(steady, {}, 0, 3000).reason == "the mode changed in the second half: lengthen clock.end_time_ns");
+    CHECK(judge_settling(steady, {}, 0, 3000).reason ==
+          "the mode changed in the second half: lengthen clock.end_time_ns");
     CHECK(judge_settling(steady, {}, 0, 1500).kept_from == 1500);  // an early change only moves the start
     const std::vector<double> noisy = autoregressive(4000, 0.2, 0.95, 22);
     CHECK(judge_settling(noisy, {}, 0, 0).reason.starts_with("the mean anode current is uncertain by"));

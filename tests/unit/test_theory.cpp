@@ -1,6 +1,6 @@
 // SPDX-License-Identifier: MIT
-// Sources: S. Y. Liao, Microwave Devices and Circuits; G. S. Raghuvanshi, Microwave Engineering; M. Kulkarni, Microwave and
-// Radar Engineering; I. Langmuir & K. B. Blodgett, Phys. Rev. 22, 347 (1923); others beside each check.
+// Sources: S. Y. Liao, Microwave Devices and Circuits; G. S. Raghuvanshi, Microwave Engineering; M. Kulkarni, Microwave
+// and Radar Engineering; I. Langmuir & K. B. Blodgett, Phys. Rev. 22, 347 (1923); others beside each check.
 #include <doctest/doctest.h>
 
 #include <cmath>
@@ -57,8 +57,8 @@ TEST_CASE("Buneman-Hartree thresholds (J. C. Slater in Collins (1948); computed 
         CHECK(relative_error(synchronous_voltage(row.r_a, row.n, row.f), row.v0) < kPrinted);
         CHECK(relative_error(hull_voltage_nonrelativistic(row.field, row.r_c, row.r_a), row.hull_nr) < kPrinted);
         CHECK(relative_error(hull_voltage(row.field, row.r_c, row.r_a), row.hull) < kPrinted);
-        CHECK(relative_error(hartree_voltage_nonrelativistic(row.field, row.r_c, row.r_a, row.n, row.f), row.hartree_nr) <
-              kPrinted);
+        CHECK(relative_error(hartree_voltage_nonrelativistic(row.field, row.r_c, row.r_a, row.n, row.f),
+                             row.hartree_nr) < kPrinted);
         CHECK(relative_error(hartree_voltage(row.field, row.r_c, row.r_a, row.n, row.f), row.hartree) < kPrinted);
     }
     CHECK(std::isnan(hartree_voltage(0.2, 0.1, 0.2, 1, 1e9)));  // 4 c at the anode
@@ -78,7 +78,8 @@ TEST_CASE("Brillouin hub of 4 kV at 0.18 T, 1.95/4.45 mm (computed; L. Brillouin
     CHECK(relative_error(brillouin_density(field, r_c, r_b), 2.14375e17) < kRounding);
     CHECK(relative_error(brillouin_charge_per_length(field, r_c, r_b), 3.20098e-7) < kRounding);
     // A full gap is Hull cutoff.
-    CHECK(relative_error(brillouin_voltage(field, r_c, r_a, r_a), hull_voltage_nonrelativistic(field, r_c, r_a)) < 1e-12);
+    CHECK(relative_error(brillouin_voltage(field, r_c, r_a, r_a), hull_voltage_nonrelativistic(field, r_c, r_a)) <
+          1e-12);
     CHECK(brillouin_hub_radius(field, r_c, r_a, 20e3) == r_a);
     CHECK(relative_error(brillouin_hub_radius(field, r_c, r_a, 1e-3), r_c) < 1e-3);  // hardly any hub
 }

@@ -80,7 +80,8 @@ TEST_CASE("a missing folder and a folder in the way are named with a cure") {
     const ScratchFolder folder;
     const std::string lost = folder.file("no/x");
     CHECK_THROWS_WITH_AS(write_whole_file(lost, "a"),
-                         (lost + ": cannot write: No such file or directory; make the folder first").c_str(), FileError);
+                         (lost + ": cannot write: No such file or directory; make the folder first").c_str(),
+                         FileError);
     std::filesystem::create_directory(folder.file("y"));
     CHECK_THROWS_AS(write_whole_file(folder.file("y"), "a"), FileError);
     CHECK(entries(folder.path()) == 1);
