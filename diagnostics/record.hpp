@@ -12,6 +12,7 @@
 #include <vector>
 
 #include "diagnostics/tally.hpp"
+#include "fields/aligned.hpp"
 #include "fields/fourier.hpp"
 #include "inputs/deck.hpp"
 
@@ -75,8 +76,8 @@ private:
     RunningTotals totals_;
     RunningTotals mark_;  // totals at the last sample
     RowFourier fourier_;
-    std::vector<double> ring_;                    // outer charge by angle
-    std::vector<std::complex<double>> spectrum_;  // its harmonics
+    AlignedVector<double> ring_;                    // outer charge by angle
+    AlignedVector<std::complex<double>> spectrum_;  // its harmonics
 };
 
 /// Radius at which the azimuthally averaged density falls through half of its peak for the last time going outwards, m;

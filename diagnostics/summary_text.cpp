@@ -223,9 +223,8 @@ std::vector<std::string> summary_lines(const Summary& s) {
     add("status", status_text(s));
     add("current", fmt::format("{} at {}", quantity(s.anode_current_A, "A"), quantity(s.anode_voltage_V.mean, "V")));
     add("input", quantity(s.input_power_W, "W"));
-    add("power",
-        fmt::format("{} from the electrons, {} into the load, {} lost in the walls", quantity(s.rf_power_W, "W"),
-                    quantity(s.load_power_W.mean, "W"), quantity(s.wall_loss_W.mean, "W")));
+    add("power", fmt::format("{} from the electrons: {} to the load, {} to the walls", quantity(s.rf_power_W, "W"),
+                             quantity(s.load_power_W.mean, "W"), quantity(s.wall_loss_W.mean, "W")));
     add("efficiency",
         fmt::format("{} electronic, {} in total", percent(s.electronic_efficiency), percent(s.total_efficiency)));
     add("mode", mode_text(s));

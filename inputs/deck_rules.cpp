@@ -151,13 +151,14 @@ std::string azimuthal_cells_text(const Deck& deck) {
 
 std::string step_text(const Deck& deck) {
     const double cyclotron_frequency = kElementaryCharge * mean_field(deck) / kElectronMass;  // rad/s
-    double step = std::numeric_limits<double>::infinity();
-    if (cyclotron_frequency > 0) step = 0.1 / cyclotron_frequency;
+    const double gain = kElementaryCharge * deck.supply.anode_voltage / (kElectronMass * kLightSpeed * kLightSpeed);
+    const double fastest = kLightSpeed * std::sqrt(gain * (2 + gain)) / (1 + gain);
+    const double transit = (deck.tube.anode_radius - deck.tube.cathode_radius) / fastest;
+    double step = 2 * transit / deck.grid.radial_cells;  // or an electron would leap over cells unfelt
+    if (cyclotron_frequency > 0) step = std::min(step, 0.1 / cyclotron_frequency);
     for (const ModeEntry& mode : deck.circuit.modes) step = std::min(step, 1 / (120 * mode.frequency));
-    if (!std::isfinite(step)) {
-        const double speed = std::sqrt(2 * kElementaryCharge * deck.supply.anode_voltage / kElectronMass);
-        step = (deck.tube.anode_radius - deck.tube.cathode_radius) / speed / 100;
-    }
+    // A diode without field has nothing slower than the transit to follow.
+    if (cyclotron_frequency == 0 && deck.circuit.modes.empty()) step = std::min(step, transit / 100);
     return fmt::format("{:.4g}", four_figures_down(step * 1e12));
 }
 

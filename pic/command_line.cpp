@@ -7,6 +7,7 @@
 
 #include <algorithm>
 #include <array>
+#include <csignal>
 #include <boost/program_options.hpp>
 #include <iostream>
 #include <new>
@@ -55,7 +56,7 @@ bool parse(const Verb& verb, const Arguments& arguments, const options::options_
         std::cout << "usage: spokewright " << verb.usage << "\n" << verb.does << "\n\n" << named;
         return false;
     }
-    if (!positional.empty() && values.count(positional) == 0) {
+    if (!positional.empty() && (values.count(positional) == 0 || values[positional].as<std::string>().empty())) {
         throw InputError(fmt::format("{}: {} is missing; usage: spokewright {}", verb.name, positional, verb.usage));
     }
     return true;
@@ -73,7 +74,7 @@ int run_verb(const Verb& verb, const Arguments& arguments) {
     if (!parse(verb, arguments, named, "DECK", values)) {
         return 0;
     }
-    if (values.count("out") == 0) {
+    if (values.count("out") == 0 || values["out"].as<std::string>().empty()) {
         throw InputError(fmt::format("run: --out is missing; usage: spokewright {}", verb.usage));
     }
     const bool quiet = values["quiet"].as<bool>();
@@ -95,6 +96,9 @@ int run_verb(const Verb& verb, const Arguments& arguments) {
         fmt::print(std::cerr, "warning: {}\n", warning);
     }
     catch_stop_signals();
+    // A closed pipe or a limit on the size of files shows where the write fails; neither may kill the run before that.
+    std::signal(SIGPIPE, SIG_IGN);
+    std::signal(SIGXFSZ, SIG_IGN);
     RunOutcome outcome;
     {
         Progress progress(std::cerr, isatty(STDERR_FILENO) != 0, quiet);
@@ -164,7 +168,10 @@ int run_command(int argc, const char* const* argv) {
     try {
         const int status = dispatch(Arguments(argv + 1, argv + argc));
         std::cout.flush();
-        return std::cout ? status : 4;
+        if (!std::cout) {
+            throw FileError("standard output: cannot be written");
+        }
+        return status;
     } catch (const InputError& error) {
         return fail(error, 2);
     } catch (const NumericsError& error) {
@@ -173,6 +180,9 @@ int run_command(int argc, const char* const* argv) {
         return fail(error, 4);
     } catch (const std::bad_alloc&) {
         std::cerr << "not enough memory; lower electrons.target_count or the size of the grid\n";
+        return 3;
+    } catch (const std::exception& error) {
+        std::cerr << "a fault of the program, please report it: " << error.what() << '\n';
         return 3;
     }
 }

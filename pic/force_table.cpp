@@ -20,7 +20,7 @@ void ForceTable::update(std::span<const double> potential, const SurfaceField& s
         // cell is 1: the gain across a cell is then the potential difference exactly.
         const double bend = 1 / (2 * (units_.cathode_cells() + row_number) + 1);
         const double rise = i == 0 ? 1 - surface.surface_share() * (1 - bend) : bend;
-        const double scale = units_.half_kick(-1 / grid.dr()) / (1 + bend * rise / 3);
+        const double scale = units_.half_kick(-1 / grid.dr()) / (1 - bend * rise / 3);
         const double at_inner = scale * (1 - rise);
         const double to_outer = scale * 2 * rise;
         const double inner_arc = units_.half_kick(-1 / (grid.radius(row_number) * grid.dtheta()));

@@ -37,18 +37,28 @@ struct Files {
 /// Makes the folder and finds out, before hours are spent, whether the result may go there.
 void prepare_folder(const RunOptions& options, const Files& files) {
     std::error_code error;
+    if (options.resume && !std::filesystem::exists(files.state, error)) {
+        throw FileError(fmt::format("{}: no state.h5 to go on from; leave --resume out to start the run",
+                                    options.folder));
+    }
     std::filesystem::create_directories(options.folder, error);
     if (error) {
         throw FileError(fmt::format("{}: cannot be made: {}; give --out a folder that may be written", options.folder,
                                     error.message()));
     }
-    const bool taken = std::filesystem::exists(files.archive) || std::filesystem::exists(files.summary) ||
-                       std::filesystem::exists(files.state);
-    if (taken && !options.resume && !options.replace) {
-        throw FileError(fmt::format("{}: holds a result already; --resume goes on with it, --replace does it anew",
-                                    options.folder));
+    for (const std::string& file : {files.archive, files.summary, files.state}) {
+        const bool taken = std::filesystem::exists(file, error);
+        if (taken && !options.resume && !options.replace) {
+            throw FileError(fmt::format("{}: holds a result already; --resume goes on with it, --replace does it anew",
+                                        options.folder));
+        }
+        if (taken && !std::filesystem::is_regular_file(file, error)) {
+            throw FileError(fmt::format("{}: is not a file and cannot be replaced; move it away", file));
+        }
     }
-    Hdf5File::create(files.archive);  // throws when the folder may not be written; leaves nothing
+    const std::string trial = options.folder + "/trial";  // permissions do not tell all: a disk may be full
+    write_whole_file(trial, "may be removed\n");
+    std::filesystem::remove(trial, error);
 }
 
 /// The run in progress: what the loop below changes.
@@ -183,7 +193,7 @@ std::string utc_now() {
 }  // namespace
 
 int default_threads(const Deck& deck) {
-    return static_cast<int>(std::clamp<std::int64_t>(deck.electrons.target_count / 8000, 1, omp_get_num_procs()));
+    return static_cast<int>(std::clamp<std::int64_t>(deck.electrons.target_count / 50000, 1, omp_get_num_procs()));
 }
 
 std::vector<std::string> check_deck(const Deck& deck) {

@@ -23,7 +23,8 @@ struct RunOutcome {
     int signal = 0;  // that stopped the run early, 0 if none; the files are written all the same
 };
 
-/// Threads that pay for a deck on this machine: one for every 8000 macro-electrons, at most the processors there are.
+/// Threads that pay for a deck on this machine: one for every 50 000 macro-electrons (fewer lose more in waiting for
+/// each other, the more so on a busy machine, than they gain), at most the processors there are.
 int default_threads(const Deck& deck);
 
 /// Runs the deck to its end time, or until stop_signal(). Throws InputError for a deck that start_checks calls

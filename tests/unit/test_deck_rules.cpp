@@ -27,11 +27,17 @@ TEST_CASE("defaults follow from the other keys") {
     CHECK(relative_error(deck.clock.step, 1 / (120 * 4.4e9)) < 1e-3);
 }
 
-TEST_CASE("the default step follows the cyclotron frequency without a circuit, the transit without a field") {
+TEST_CASE("the default step without a circuit: orbit, cells at full speed, transit without a field") {
+    const auto step = [](const std::vector<std::string>& overrides) {
+        return read_text(kSmallDeck, overrides).clock.step;
+    };
+    constexpr double kFourFigures = 1e-3;  // the default is rounded down to four
     const double gyro_step = 0.1 / (kElementaryCharge * 0.175 / kElectronMass);
-    CHECK(relative_error(read_text(kSmallDeck).clock.step, gyro_step) < 1e-3);  // four figures
-    const double speed = std::sqrt(2 * kElementaryCharge * 4150 / kElectronMass);
-    CHECK(relative_error(read_text(kSmallDeck, {"magnet.field_T=0"}).clock.step, 2.6e-3 / speed / 100) < 1e-3);
+    const double gain = 4150 / 510998.95;  // gamma - 1
+    const double speed = kLightSpeed * std::sqrt(gain * (2 + gain)) / (1 + gain);
+    CHECK(relative_error(step({"grid.radial_cells=24"}), gyro_step) < kFourFigures);
+    CHECK(relative_error(step({"grid.radial_cells=100"}), 2 * 2.6e-5 / speed) < kFourFigures);
+    CHECK(relative_error(step({"magnet.field_T=0"}), 2.6e-3 / speed / 100) < kFourFigures);
 }
 
 TEST_CASE("azimuthal cells default to 16 a vane, 64 in a smooth bore, never more than 504") {
