@@ -24,7 +24,7 @@ struct Limit {
 // C. K. Birdsall & A. B. Langdon, Plasma Physics via Computer Simulation (1985), sections 4-2 and 4-4.
 constexpr Limit kAngleAStep{0.3, 0.5};
 // Steps an unmagnetised electron needs to cross the gap: below 20 the entry and exit steps are a tenth of the flight.
-constexpr Limit kStepsAcross{50, 20};
+constexpr Limit kStepsAcross{20, 8};
 // An electron at the full voltage that leaps over cells does not feel the field in them; beyond 6 the push would clip
 // it.
 constexpr Limit kCellsAStep{3, 6};
