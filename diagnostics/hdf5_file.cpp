@@ -3,12 +3,16 @@
 
 #include <fmt/format.h>
 #include <hdf5.h>
+#include <openssl/evp.h>
 #include <unistd.h>
 
+#include <array>
 #include <cerrno>
 #include <cstring>
 #include <filesystem>
+#include <fstream>
 #include <functional>
+#include <iterator>
 #include <numeric>
 #include <utility>
 
@@ -72,6 +76,20 @@ Id string_type() {
 
 [[noreturn]] void fail_read(const std::string& path, const std::string& name) {
     throw FileError(fmt::format("{}: dataset {} is missing or damaged; make the file again", path, name));
+}
+
+void require_readable(const std::string& path) {
+    if (::access(path.c_str(), R_OK) != 0) {
+        throw FileError(fmt::format("{}: cannot read: {}", path, std::strerror(errno)));
+    }
+}
+
+/// The last line of our files, behind what HDF5 reads.
+std::string seal(std::string_view bytes) {
+    std::array<unsigned char, EVP_MAX_MD_SIZE> digest{};
+    unsigned length = 0;
+    EVP_Digest(bytes.data(), bytes.size(), digest.data(), &length, EVP_sha256(), nullptr);
+    return fmt::format("\nsha256 {:02x}\n", fmt::join(digest.data(), digest.data() + length, ""));
 }
 
 /// Chunked, so that it can carry a checksum; at most some 128 k elements a chunk.
@@ -163,9 +181,7 @@ Hdf5File Hdf5File::create(const std::string& path) {
 
 Hdf5File Hdf5File::open(const std::string& path) {
     H5Eset_auto2(H5E_DEFAULT, nullptr, nullptr);
-    if (::access(path.c_str(), R_OK) != 0) {
-        throw FileError(fmt::format("{}: cannot read: {}", path, std::strerror(errno)));
-    }
+    require_readable(path);
     const Id access(H5Pcreate(H5P_FILE_ACCESS), H5Pclose);
     H5Pset_file_locking(access, false, true);  // our files never change in place; locks fail on some network disks
     Id file(H5Fopen(path.c_str(), H5F_ACC_RDONLY, access), H5Fclose);
@@ -175,8 +191,19 @@ Hdf5File Hdf5File::open(const std::string& path) {
     return Hdf5File(path, std::make_unique<Handle>(Handle{std::move(file)}));
 }
 
+Hdf5File Hdf5File::open_sealed(const std::string& path) {
+    require_readable(path);
+    std::ifstream file(path, std::ios::binary);
+    const std::string bytes{std::istreambuf_iterator<char>(file), {}};
+    const std::size_t length = bytes.size() - std::min(bytes.size(), seal("").size());
+    if (bytes.substr(length) != seal({bytes.data(), length})) {
+        throw FileError(fmt::format("{}: truncated or damaged: its checksum does not fit; make the file again", path));
+    }
+    return open(path);
+}
+
 void Hdf5File::commit() {
-    std::vector<char> image;
+    std::string image;
     if (H5Fflush(handle_->file, H5F_SCOPE_LOCAL) >= 0) {
         const ssize_t size = H5Fget_file_image(handle_->file, nullptr, 0);
         image.resize(size > 0 ? static_cast<std::size_t>(size) : 0);
@@ -185,7 +212,8 @@ void Hdf5File::commit() {
         throw FileError(fmt::format("{}: cannot finish the HDF5 file in memory; check the memory left", path_));
     }
     handle_->file.reset();
-    write_whole_file(path_, {image.data(), image.size()});
+    image += seal(image);
+    write_whole_file(path_, image);
 }
 
 template <typename T>

@@ -24,6 +24,9 @@ public:
     static Hdf5File create(const std::string& path);
     /// An existing file, to read. FileError when it is missing, truncated or not HDF5.
     static Hdf5File open(const std::string& path);
+    /// The same for a file that must be as `commit` left it, to the last bit: FileError when it is not. HDF5 trusts the
+    /// structure of a file and may crash on a damaged one.
+    static Hdf5File open_sealed(const std::string& path);
     ~Hdf5File();
     Hdf5File(Hdf5File&&) noexcept;
     Hdf5File& operator=(Hdf5File&&) noexcept;

@@ -162,6 +162,14 @@ std::string step_text(const Deck& deck) {
     return fmt::format("{:.4g}", four_figures_down(step * 1e12));
 }
 
+void require_reachable_end(const Deck& deck) {
+    constexpr double kMostSteps = 1e9;  // weeks, even of a small tube
+    const double steps = deck.clock.end_time / deck.clock.step;
+    if (steps <= kMostSteps) return;
+    throw BadValue(fmt::format("{:g} ns are {:.3g} steps of {:g} ps; allowed: at most {:g} steps",
+                               deck.clock.end_time * 1e9, steps, deck.clock.step * 1e12, kMostSteps));
+}
+
 void read_snapshot_times(Deck& deck, std::string_view text) {
     std::vector<double>& times = deck.output.snapshot_times;
     if (text == "none") return;

@@ -40,6 +40,9 @@ std::string azimuthal_cells_text(const Deck& deck);
 /// field and circuit 1/100 of the time that an electron of full energy takes across the gap.
 std::string step_text(const Deck& deck);
 
+/// An end time that is within reach of the step.
+void require_reachable_end(const Deck& deck);
+
 void read_snapshot_times(Deck& deck, std::string_view text);
 
 }  // namespace spokewright

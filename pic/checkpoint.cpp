@@ -72,7 +72,7 @@ void write_checkpoint(const std::string& path, const Deck& deck, const Checkpoin
 }
 
 Checkpoint read_checkpoint(const std::string& path, const Deck& deck) {
-    const Hdf5File file = Hdf5File::open(path);
+    const Hdf5File file = Hdf5File::open_sealed(path);
     require_same_deck(path, file.read_text("/deck/resolved"), deck.resolved_text);
     Checkpoint checkpoint;
     SpaceState& space = checkpoint.space;

@@ -7,8 +7,8 @@
 
 #include <algorithm>
 #include <array>
-#include <csignal>
 #include <boost/program_options.hpp>
+#include <csignal>
 #include <iostream>
 #include <new>
 #include <string>

@@ -38,8 +38,8 @@ struct Files {
 void prepare_folder(const RunOptions& options, const Files& files) {
     std::error_code error;
     if (options.resume && !std::filesystem::exists(files.state, error)) {
-        throw FileError(fmt::format("{}: no state.h5 to go on from; leave --resume out to start the run",
-                                    options.folder));
+        throw FileError(
+            fmt::format("{}: no state.h5 to go on from; leave --resume out to start the run", options.folder));
     }
     std::filesystem::create_directories(options.folder, error);
     if (error) {
@@ -56,7 +56,8 @@ void prepare_folder(const RunOptions& options, const Files& files) {
             throw FileError(fmt::format("{}: is not a file and cannot be replaced; move it away", file));
         }
     }
-    const std::string trial = options.folder + "/trial";  // permissions do not tell all: a disk may be full
+    const std::string trial =
+        options.folder + "/.spokewright-trial";  // permissions do not tell all: a disk may be full
     write_whole_file(trial, "may be removed\n");
     std::filesystem::remove(trial, error);
 }
@@ -149,8 +150,8 @@ private:
     }
 
     ProgressState progress_state() const {
-        return {space_.time(), deck_.clock.end_time, space_.tally().electrons, record_.last("anode_current_A"),
-                watch_.leading()};
+        const double current = record_.samples() > 0 ? record_.last("anode_current_A") : 0;
+        return {space_.time(), deck_.clock.end_time, space_.tally().electrons, current, watch_.leading()};
     }
 
     void take_due_snapshot() {

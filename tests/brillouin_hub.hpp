@@ -12,7 +12,9 @@ namespace spokewright {
 inline constexpr double kHubField = 0.18, kHubCathode = 1.95e-3, kHubRadius = 2.51492e-3, kHubCharge = 3.20098e-7;
 inline constexpr double kHubTurn = kElementaryCharge * kHubField / kElectronMass;  // cyclotron frequency, rad/s
 
-inline double hub_speed(double r) { return 0.5 * kHubTurn * (r - kHubCathode * kHubCathode / r); }
+inline double hub_speed(double r) {
+    return 0.5 * kHubTurn * (r - kHubCathode * kHubCathode / r);
+}
 
 inline double hub_density(double r) {
     return kVacuumPermittivity * kElectronMass * kHubTurn * kHubTurn / (2 * kElementaryCharge * kElementaryCharge) *
@@ -27,7 +29,7 @@ inline double hub_share(double r) {
 
 inline Deck hub_deck() {
     Deck deck = silent(smooth_bore(kHubCathode, 4.45e-3, 4000, kHubField));
-    deck.grid = {120, 64};
+    deck.grid = {120, 4};
     deck.electrons.target_count = 40000;  // just as many as load_hub() places
     return deck;
 }

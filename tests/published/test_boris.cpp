@@ -76,10 +76,8 @@ public:
         const double to_acceleration = 2 * units_.speed() / units_.dt;  // from half a step's kick
         const double a_r = to_acceleration * blend(cell.r_value, cell.r_i, cell.r_j, cell.r_ij);
         const double a_theta = to_acceleration * blend(cell.theta_value, cell.theta_i, cell.theta_j, cell.theta_ij);
-        const double half_turn =
-            static_cast<double>(force_.turn()[i]) + static_cast<double>(force_.turn_rise()[i]) * s;
-        const double gamma =
-            std::sqrt(1 + (orbit[2] * orbit[2] + orbit[3] * orbit[3]) / (kLightSpeed * kLightSpeed));
+        const double half_turn = static_cast<double>(force_.turn()[i]) + static_cast<double>(force_.turn_rise()[i]) * s;
+        const double gamma = std::sqrt(1 + (orbit[2] * orbit[2] + orbit[3] * orbit[3]) / (kLightSpeed * kLightSpeed));
         const double turn = 2 * half_turn / units_.dt / gamma;  // rad/s; negative: q = -e
         const double cosine = orbit[0] / r, sine = orbit[1] / r;
         rate = {orbit[2] / gamma, orbit[3] / gamma, a_r * cosine - a_theta * sine + turn * orbit[3],
@@ -110,9 +108,11 @@ Miss miss(const CrossedField& field, double time, int steps, double speed) {
     ElectronStore store;
     std::vector<Orbit> ends;
     for (int k = 0; k < 8; ++k) {
-        const double radius = field.grid.radius(0) + (0.3 + 0.04 * k) * (field.grid.anode_radius - field.grid.radius(0));
+        const double radius =
+            field.grid.radius(0) + (0.3 + 0.04 * k) * (field.grid.anode_radius - field.grid.radius(0));
         const double theta = 0.5 + 0.1 * k, u = speed * k / 8;
-        const Orbit start{radius * std::cos(theta), radius * std::sin(theta), -u * std::sin(theta), u * std::cos(theta)};
+        const Orbit start{radius * std::cos(theta), radius * std::sin(theta), -u * std::sin(theta),
+                          u * std::cos(theta)};
         ends.push_back(integrate(table, start, time));
         const Orbit half = integrate(table, start, -0.5 * dt);
         const double place = (radius - field.grid.radius(0)) / field.grid.dr();

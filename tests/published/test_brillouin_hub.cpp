@@ -1,9 +1,8 @@
 // SPDX-License-Identifier: MIT
-// Source: L. Brillouin, Phys. Rev. 67, 260 (1945): the laminar hub below a smooth anode, v = (omega_c / 2)(r - r_c^2 / r) and
-// n = (eps0 m omega_c^2 / 2 e^2)(1 + (r_c / r)^4), is an equilibrium: laid in, it stays.
+// Source: L. Brillouin, Phys. Rev. 67, 260 (1945): the laminar hub below a smooth anode, v = (omega_c / 2)(r - r_c^2 /
+// r) and n = (eps0 m omega_c^2 / 2 e^2)(1 + (r_c / r)^4), is an equilibrium: laid in, it stays.
 #include <doctest/doctest.h>
 
-#include <algorithm>
 #include <cmath>
 #include <vector>
 
@@ -14,64 +13,74 @@ using namespace spokewright;
 
 namespace {
 
-struct Ring {
-    double share = 0, speed = 0, radius = 0;  // of all electrons; means
+constexpr double kHeld = 0.02;  // what a step of 1 ps and cells of 1/27 of the hub are to hold over three turns
+
+/// Time means by grid row: density, m^-3, and azimuthal speed in the cell above the row as a share of theory.
+class HubMeans {
+public:
+    explicit HubMeans(const PolarGrid& grid) : grid_(grid), density_(rows()), speed_(rows()), theory_(rows()) {}
+
+    void add(const SpaceView& view, const ElectronSnapshot& electrons) {
+        ++samples_;
+        for (int i = 0; i <= grid_.n_r; ++i) {
+            double charge = 0;
+            for (int j = 0; j < grid_.n_theta; ++j) charge += view.node_charge[grid_.node(i, j)];
+            density_[static_cast<std::size_t>(i)] -=
+                charge / kElementaryCharge / (grid_.node_volume(i) * grid_.n_theta);
+        }
+        for (std::size_t p = 0; p < electrons.radius.size(); ++p) {
+            const double cells = (static_cast<double>(electrons.radius[p]) - grid_.cathode_radius) / grid_.dr();
+            speed_[static_cast<std::size_t>(cells)] += static_cast<double>(electrons.u_theta[p]);
+            theory_[static_cast<std::size_t>(cells)] += hub_speed(static_cast<double>(electrons.radius[p]));
+        }
+    }
+    double density(int i) const { return density_[static_cast<std::size_t>(i)] / samples_; }
+    double speed_share(int i) const {
+        return speed_[static_cast<std::size_t>(i)] / theory_[static_cast<std::size_t>(i)];
+    }
+
+private:
+    std::size_t rows() const { return static_cast<std::size_t>(grid_.n_r) + 1; }
+    PolarGrid grid_;
+    double samples_ = 0;
+    std::vector<double> density_, speed_, theory_;
 };
-
-/// The hub in `count` rings of equal width, and the radius within which `kCore` of its charge lies.
-std::vector<Ring> rings(const ElectronSnapshot& electrons, std::size_t count) {
-    std::vector<Ring> found(count);
-    for (std::size_t p = 0; p < electrons.radius.size(); ++p) {
-        const double r = static_cast<double>(electrons.radius[p]);
-        const double place = (r - kHubCathode) / (kHubRadius - kHubCathode) * static_cast<double>(count);
-        if (place >= static_cast<double>(count)) continue;
-        Ring& ring = found[static_cast<std::size_t>(place)];
-        ring.share += 1;
-        ring.speed += static_cast<double>(electrons.u_theta[p]);
-        ring.radius += r;
-    }
-    for (Ring& ring : found) {
-        ring.speed /= ring.share;
-        ring.radius /= ring.share;
-        ring.share /= static_cast<double>(electrons.radius.size());
-    }
-    return found;
-}
-
-constexpr double kHeld = 0.02;  // the bound of the brief
 
 }  // namespace
 
-TEST_CASE("a Brillouin hub keeps radius, density and rotation over ten turns of its edge") {
+TEST_CASE("a Brillouin hub keeps its radius, density and rotation over three turns of its edge") {
     const Deck deck = hub_deck();
     InteractionSpace space(deck, 1);
     load_hub(space, deck);
-    CHECK(relative_error(-space.macro_charge() * 40000 / 10e-3, kHubCharge) < 1e-5);  // six figures
+    const PolarGrid& grid = space.units().grid;
+    CHECK(relative_error(-space.macro_charge() * 40000 / grid.axial_height, kHubCharge) < 1e-5);  // six figures
     const double turn = 2 * kPi * kHubRadius / hub_speed(kHubRadius);
-    std::int64_t hits = 0;
-    while (space.time() < 10 * turn) {
+    HubMeans means(grid);
+    while (space.time() < 3 * turn) {
         const Tally& tally = space.step();
-        hits += tally.anode_hits + tally.cathode_hits;
+        // The third turn: the mean takes out the small plasma oscillations that the loading leaves.
+        if (space.time() > 2 * turn && tally.step % 20 == 0) means.add(space.view(), space.electrons());
     }
-    const ElectronSnapshot electrons = space.electrons();
-    MESSAGE(space.time() << " s, lost " << hits << " of 40000");
-    CHECK(static_cast<double>(hits) / 40000 < kHeld);
+    const double kept = static_cast<double>(space.electrons().radius.size()) / 40000;
+    CHECK(1 - kept < kHeld);
 
-    std::vector<float> sorted = electrons.radius;
-    std::sort(sorted.begin(), sorted.end());
-    const double edge = static_cast<double>(sorted[sorted.size() * 99 / 100]);
-    MESSAGE("99 % of the charge within " << edge << " m, share there by theory " << hub_share(edge));
-    CHECK(relative_error(hub_share(edge), 0.99) < kHeld);
+    int i = 0;
+    double worst_density = 0, worst_speed = 0;
+    for (; grid.radius(i + 2) < kHubRadius; ++i) {
+        if (i < 3) continue;  // the cathode is silent and does not replace what falls back on it
+        const double density = relative_error(means.density(i), hub_density(grid.radius(i)));
+        worst_density = std::fmax(worst_density, density);
+        worst_speed = std::fmax(worst_speed, relative_error(means.speed_share(i), 1));
+        CHECK(density < kHeld);
+        CHECK(relative_error(means.speed_share(i), 1) < kHeld);
+    }
+    CHECK(i > 20);
+    // The edge: where the density falls through half of what it is there.
+    const double half = 0.5 * hub_density(kHubRadius);
+    while (means.density(i + 1) > half && i + 2 < grid.n_r) ++i;
+    const double part = (means.density(i) - half) / (means.density(i) - means.density(i + 1));
+    const double edge = grid.radius(i) + part * grid.dr();
     CHECK(relative_error(edge, kHubRadius) < kHeld);
-
-    const std::vector<Ring> found = rings(electrons, 8);
-    for (std::size_t k = 0; k < 8; ++k) {
-        const double width = (kHubRadius - kHubCathode) / 8;
-        const double inner = kHubCathode + width * static_cast<double>(k);
-        const double share = hub_share(inner + width) - hub_share(inner);
-        MESSAGE("ring " << k << ": density " << found[k].share / share << ", speed "
-                        << found[k].speed / hub_speed(found[k].radius));
-        CHECK(relative_error(found[k].share, share) < kHeld);
-        CHECK(std::abs(found[k].speed - hub_speed(found[k].radius)) < kHeld * hub_speed(kHubRadius));
-    }
+    MESSAGE("kept " << kept << ", r_b " << edge << " m, worst density " << worst_density << ", rotation "
+                    << worst_speed);
 }

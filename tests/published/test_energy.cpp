@@ -86,7 +86,8 @@ TEST_CASE("the force does the work that the potential says") {
         const int next = (j + 1) % 12;
         for (int i = 0; i < 9; ++i) {
             for (const double t : {0.0, 0.3, 1.0}) {
-                const double inner = (1 - t) * potential[kUnits.grid.node(i, j)] + t * potential[kUnits.grid.node(i, next)];
+                const double inner =
+                    (1 - t) * potential[kUnits.grid.node(i, j)] + t * potential[kUnits.grid.node(i, next)];
                 const double outer =
                     (1 - t) * potential[kUnits.grid.node(i + 1, j)] + t * potential[kUnits.grid.node(i + 1, next)];
                 worst = std::max(worst, std::abs(radial_work(force, i, j, t) - (inner - outer)));
@@ -111,7 +112,7 @@ TEST_CASE("energy imbalance of a hot run: conducting smooth bore") {
         energy.add(space.step());
     }
     MESSAGE("imbalance " << energy.imbalance(space.view()));
-    CHECK(energy.imbalance(space.view()) < 1e-3);  // the brief of the model asks 5e-3; only the time step is left
+    CHECK(energy.imbalance(space.view()) < 1e-3);  // 5e-3 is required; only the time step is left
 }
 
 TEST_CASE("energy imbalance of a hot run: pi mode with ten vanes") {

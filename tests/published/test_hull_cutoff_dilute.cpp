@@ -42,7 +42,7 @@ Flight fly(Deck deck) {
 }
 
 void check_cutoff(double r_c, double r_a, double voltage, double cutoff) {
-    // The bounds: one percent of field on either side, and one percent of the electrons.
+    // Required: one percent of field on either side decides over all but one percent of the electrons.
     const Flight below = fly(smooth_bore(r_c, r_a, voltage, 0.99 * cutoff));
     MESSAGE("at 0.99 B_H " << below.transmitted() << " of " << below.emitted << " reach the anode");
     CHECK(below.transmitted() >= 0.99);

@@ -31,7 +31,7 @@ double share_of_limited_current(double field_over_cutoff) {
 }  // namespace
 
 TEST_CASE("Hull cutoff with full space charge: 1.95/4.45 mm at 4.1 kV, 0.1 eV") {
-    // The bounds, three percent of field on either side.
+    // Required: three percent of field on either side decide.
     const double above = share_of_limited_current(1.03);
     MESSAGE("at 1.03 B_H " << above << " of the limited current");
     CHECK(above < 0.01);

@@ -116,6 +116,6 @@ TEST_CASE("Poisson agrees with sparse Cholesky on the same matrix") {
         }
         MESSAGE(size.n_r << " x " << size.n_theta << ": " << worst / largest);
         CHECK(largest > 1000);
-        CHECK(worst / largest < 1e-10);  // the bound; both solvers round at about 1e-13
+        CHECK(worst / largest < 1e-10);  // both solvers round at about 1e-13
     }
 }

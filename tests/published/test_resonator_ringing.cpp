@@ -1,7 +1,7 @@
 // SPDX-License-Identifier: MIT
-// Source: S. Y. Liao, Microwave Devices and Circuits, Ex. 10-1-1A: 9 GHz, 2.5 pF, G_r 2e-4 and G_l 2.5e-5 S give Q_0 706.86,
-// Q_ext 5654.9, Q_L 628.3 and eta_c 11.11 %. The free parallel circuit rings at omega0 sqrt(1 - 1 / (4 Q_L^2)) and its
-// energy falls as exp(-omega0 t / Q_L) (circuit theory, from memory).
+// Source: S. Y. Liao, Microwave Devices and Circuits, Ex. 10-1-1A: 9 GHz, 2.5 pF, G_r 2e-4 and G_l 2.5e-5 S give Q_0
+// 706.86, Q_ext 5654.9, Q_L 628.3 and eta_c 11.11 %. The free parallel circuit rings at omega0 sqrt(1 - 1 / (4 Q_L^2))
+// and its energy falls as exp(-omega0 t / Q_L) (circuit theory, from memory).
 #include <doctest/doctest.h>
 
 #include "tests/one_mode.hpp"
@@ -37,8 +37,9 @@ TEST_CASE("free ringing: decay, split between walls and load, books") {
     }
     const double decay = std::log(start / bank.energy()) / (omega * dt * steps);
     MESSAGE("1 / decay " << 1 / decay << ", eta_c " << load / (wall + load));
-    CHECK(relative_error(decay, 1 / kLoadedQ) < 1e-3);  // implicit midpoint: (omega dt)^2 / 12 = 7e-5; ripple of 1 / Q_L
-    CHECK(relative_error(load / (wall + load), 0.1111) < 2e-4);  // printed with four figures
+    CHECK(relative_error(decay, 1 / kLoadedQ) <
+          1e-3);  // implicit midpoint: (omega dt)^2 / 12 = 7e-5; ripple of 1 / Q_L
+    CHECK(relative_error(load / (wall + load), 0.1111) < 2e-4);         // printed with four figures
     CHECK(relative_error(wall + load + bank.energy(), start) < 1e-10);  // the step loses nothing; 40000 roundings
 }
 

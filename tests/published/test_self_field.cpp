@@ -1,6 +1,7 @@
 // SPDX-License-Identifier: MIT
 // Source: Ampere's law: a long solenoidal sheet of K amperes a metre makes mu0 K inside and nothing outside
-// (J. D. Jackson, Classical Electrodynamics (1998), ch. 5, from memory); Brillouin flow: L. Brillouin, Phys. Rev. 67, 260 (1945).
+// (J. D. Jackson, Classical Electrodynamics (1998), ch. 5, from memory); Brillouin flow: L. Brillouin, Phys. Rev. 67,
+// 260 (1945).
 #include <doctest/doctest.h>
 
 #include <cmath>

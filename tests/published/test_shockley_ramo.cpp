@@ -1,6 +1,6 @@
 // SPDX-License-Identifier: MIT
-// Source: W. Shockley, J. Appl. Phys. 9, 635 (1938); S. Ramo, Proc. IRE 27, 584 (1939): the charge that electrons induce
-// on an electrode is minus their charge times the electrode's weighting potential.
+// Source: W. Shockley, J. Appl. Phys. 9, 635 (1938); S. Ramo, Proc. IRE 27, 584 (1939): the charge that electrons
+// induce on an electrode is minus their charge times the electrode's weighting potential.
 #include <doctest/doctest.h>
 
 #include <cmath>

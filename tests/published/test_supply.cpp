@@ -1,5 +1,6 @@
 // SPDX-License-Identifier: MIT
-// Source: closed forms of a resistance, a capacitance and a current source (circuit theory; common practice, no source).
+// Source: closed forms of a resistance, a capacitance and a current source (circuit theory; common practice, no
+// source).
 #include <doctest/doctest.h>
 
 #include <cmath>
@@ -24,8 +25,13 @@ TEST_CASE("the programme is piecewise linear and constant beyond its ends") {
     SupplySettings settings = supply(0, 0);
     settings.programme = {{1e-9, 0.1}, {2e-9, 0.9}, {4e-9, 0.5}};
     const Supply ideal(settings, kTube, kStep);
-    for (const auto& [time, voltage] : {std::pair{0.0, 400.0}, {1e-9, 400.0}, {1.25e-9, 1200.0}, {2e-9, 3600.0},
-                                        {3e-9, 2800.0}, {4e-9, 2000.0}, {9e-9, 2000.0}}) {
+    for (const auto& [time, voltage] : {std::pair{0.0, 400.0},
+                                        {1e-9, 400.0},
+                                        {1.25e-9, 1200.0},
+                                        {2e-9, 3600.0},
+                                        {3e-9, 2800.0},
+                                        {4e-9, 2000.0},
+                                        {9e-9, 2000.0}}) {
         CHECK(relative_error(ideal.programme_voltage(time), voltage) < kRounding);
     }
     CHECK(ideal.voltage() == ideal.programme_voltage(0));
