@@ -237,8 +237,8 @@ std::vector<DeckKey> circuit_keys() {
 
 std::vector<DeckKey> run_keys() {
     return {
-        {"grid", "radial_cells", whole(&Deck::grid, &GridSettings::radial_cells, 8, 120), preset("48"),
-         "Cells from cathode to anode.", ""},
+        {"grid", "radial_cells", text_of("", "8..120", read_radial_cells), preset("48"), "Cells from cathode to anode.",
+         ""},
         {"grid", "azimuthal_cells", text_of("", "8..504, a multiple of vane_count", read_azimuthal_cells),
          computed("16 a vane, 64 in a smooth bore", azimuthal_cells_text), "Cells around the tube.", ""},
         {"clock", "step_ps", real(&Deck::clock, &ClockSettings::step, kPicosecond, above(0, 1000)),

@@ -130,6 +130,15 @@ void require_primed_mode(const Deck& deck) {
     }
 }
 
+void read_radial_cells(Deck& deck, std::string_view text) {
+    deck.grid.radial_cells = read_count(text, 8, 120);
+    const double width = (deck.tube.anode_radius - deck.tube.cathode_radius) / deck.grid.radial_cells;
+    if (width <= deck.tube.cathode_radius) return;
+    throw BadValue(
+        fmt::format("{} cells are {:.3g} mm wide each; allowed: cells no wider than cathode_radius_mm = {:g}",
+                    deck.grid.radial_cells, width * 1e3, deck.tube.cathode_radius * 1e3));
+}
+
 void read_azimuthal_cells(Deck& deck, std::string_view text) {
     const int cells = read_count(text, kSmallestAzimuthalCells, kLargestAzimuthalCells);
     const int vanes = deck.tube.vane_count;

@@ -33,6 +33,8 @@ void read_prime_mode(Deck& deck, std::string_view text);
 std::string pi_mode_text(const Deck& deck);
 void require_primed_mode(const Deck& deck);
 
+/// Cells no wider than the cathode's radius: the push counts on an electron not crossing the axis.
+void read_radial_cells(Deck& deck, std::string_view text);
 void read_azimuthal_cells(Deck& deck, std::string_view text);
 std::string azimuthal_cells_text(const Deck& deck);
 

@@ -19,13 +19,14 @@ inline AlignedVector<float> radial_bend(const StepUnits& units) {
 
 struct CellShare {
     std::int32_t i, j;        // cell
-    float radial, azimuthal;  // shares of the outer and of the next node, 0..1
+    float depth;              // share of the cell's depth, 0..1
+    float radial, azimuthal;  // weights of the outer and of the next node, 0..1
 };
 
 inline CellShare cell_share(std::int32_t r, std::int32_t theta, const float* bend) {
     const std::int32_t i = r >> kRadialBits;
-    const float fraction = static_cast<float>(r & kRadialMask) * (1.0f / kRadialOne);
-    return {i, theta >> kAzimuthalBits, fraction * (1.0f + bend[i] * (fraction - 1.0f)),
+    const float depth = static_cast<float>(r & kRadialMask) * (1.0f / kRadialOne);
+    return {i, theta >> kAzimuthalBits, depth, depth + bend[i] * depth * (depth - 1.0f),
             static_cast<float>(theta & kAzimuthalMask) * (1.0f / kAzimuthalOne)};
 }
 

@@ -1,6 +1,6 @@
 // SPDX-License-Identifier: MIT
-// What the push reads: eight floats a cell for the electric half kick (value, d_i, d_j, d_ij of the bilinear form for
-// each component) and two a row for the magnetic half turn. In the units of step_units.hpp.
+// What the push reads of one cell, 32 bytes: the electric half kick and the magnetic half turn anywhere in it, in the
+// units of step_units.hpp.
 //
 // The force is the exact gradient of the potential interpolated with the weights of the scatter, so what an electron
 // gains is what the electrodes and the space charge lose, whatever the size of the cells: only the time step is left to
@@ -15,11 +15,15 @@
 
 namespace spokewright {
 
-/// Bilinear coefficients of one cell: kick = value + d_i s + d_j t + d_ij s t, s the radial area share, t the
-/// azimuthal.
+/// With f the share of the cell's depth, s the area share and t the azimuthal share (cell_share.hpp):
+///   radial kick    = (radial + radial_rise t) (1 + slope (f - 1/2)),
+///   azimuthal kick = along + along_rise s,
+///   half turn      = turn + turn_rise s,   s = f + bend f (f - 1).
 struct alignas(32) CellForce {
-    float r_value, r_i, r_j, r_ij;
-    float theta_value, theta_i, theta_j, theta_ij;
+    float radial, radial_rise;
+    float along, along_rise;
+    float slope, bend;
+    float turn, turn_rise;
 };
 
 class ForceTable {
@@ -33,16 +37,11 @@ public:
     /// Cell (i, j) stands at i * stride() + j.
     const CellForce* cells() const { return cells_.data(); }
     std::size_t stride() const { return stride_; }
-    /// Half turn at s = 0 and its rise to s = 1, [n_r].
-    const float* turn() const { return turn_.data(); }
-    const float* turn_rise() const { return turn_rise_.data(); }
 
 private:
     StepUnits units_;
     std::size_t stride_;  // n_theta + 2: a power of two would map whole columns to the same cache sets
     AlignedVector<CellForce> cells_;
-    AlignedVector<float> turn_;
-    AlignedVector<float> turn_rise_;
 };
 
 }  // namespace spokewright

@@ -14,8 +14,8 @@ struct Kick {
 };
 
 inline Kick half_kick(const CellForce& cell, const CellShare& at) {
-    return {cell.r_value + cell.r_i * at.radial + (cell.r_j + cell.r_ij * at.radial) * at.azimuthal,
-            cell.theta_value + cell.theta_i * at.radial + (cell.theta_j + cell.theta_ij * at.radial) * at.azimuthal};
+    return {(cell.radial + cell.radial_rise * at.azimuthal) * (1.0f + cell.slope * (at.depth - 0.5f)),
+            cell.along + cell.along_rise * at.radial};
 }
 
 inline const CellForce& cell_of(const ForceTable& force, const CellShare& at) {
@@ -44,8 +44,9 @@ void Push::advance_range(ElectronStore& store, const ForceTable& force, std::siz
     const std::int32_t turn_end = units_.azimuthal_end();
     for (std::size_t p = begin; p < end; ++p) {
         const CellShare at = cell_share(store.r[p], store.theta[p], bend_.data());
-        const Kick kick = half_kick(cell_of(force, at), at);
-        const float half_turn = force.turn()[at.i] + force.turn_rise()[at.i] * at.radial;
+        const CellForce& cell = cell_of(force, at);
+        const Kick kick = half_kick(cell, at);
+        const float half_turn = cell.turn + cell.turn_rise * at.radial;
 
         // u: n - 1/2 -> n + 1/2
         const float minus_r = store.u_r[p] + kick.r;

@@ -148,6 +148,10 @@ TEST_CASE("a geometry or a mode that cannot be") {
           Refusal{2, "tube.ini:13: circuit.mode_numbers: mode 6 of 10 vanes; allowed: mode numbers 1..5\n"});
     CHECK(refusal_with("= 4 5", "= 0 5") ==
           Refusal{2, "tube.ini:13: circuit.mode_numbers: mode 0 of 10 vanes; allowed: mode numbers 1..5\n"});
+    CHECK(refusal_with("cathode_radius_mm = 2", "cathode_radius_mm = 0.01") ==
+          Refusal{2,
+                  "tube.ini:22: grid.radial_cells: 40 cells are 0.115 mm wide each; allowed: cells no wider than "
+                  "cathode_radius_mm = 0.01\n"});
     CHECK(refusal_with("mode = 5", "mode = 3") ==
           Refusal{2,
                   "tube.ini:20: prime.voltage_V: mode 3 is not in circuit.mode_numbers; allowed: 0 V, or one of the "

@@ -19,7 +19,7 @@ namespace {
 
 Json heating_run(const char* end_time_ns, Arguments more = {}) {
     const ScratchFolder folder;
-    more.insert(more.end(), {"--threads", "2", "--quiet", "--set", std::string("clock.end_time_ns=") + end_time_ns});
+    more.insert(more.end(), {"--threads", "1", "--quiet", "--set", std::string("clock.end_time_ns=") + end_time_ns});
     const Outcome outcome =
         spokewright::spokewright(run_of(SPOKEWRIGHT_SOURCE_DIR "/inputs/tubes/heating.ini", folder.file("out"), more));
     INFO(outcome.err);
@@ -38,7 +38,7 @@ bool has_event(const Json& summary, const char* kind, const Json& from, const Js
 }  // namespace
 
 TEST_CASE("the heating tube settles in the pi mode with five spokes and balanced books") {
-    const Json summary = heating_run("150");
+    const Json summary = heating_run("160");
     CHECK(summary.at("status") == "settled");
     CHECK(summary.at("dominant_mode") == 5);
     CHECK(summary.at("spoke_count") == 5);

@@ -66,17 +66,14 @@ public:
         if (!(cells >= 0 && cells < units_.grid.n_r)) throw std::range_error("the orbit left the gap");
         const auto i = static_cast<std::size_t>(cells), j = static_cast<std::size_t>(azimuth);
         const double fraction = cells - std::floor(cells), t = azimuth - std::floor(azimuth);
-        const double bend = 1 / (2 * (units_.cathode_cells() + std::floor(cells)) + 1);
-        const double s = fraction * (1 + bend * (fraction - 1));
         const CellForce& cell = force_.cells()[i * force_.stride() + j];
-        const auto blend = [&](float value, float d_i, float d_j, float d_ij) {
-            return static_cast<double>(value) + static_cast<double>(d_i) * s +
-                   (static_cast<double>(d_j) + static_cast<double>(d_ij) * s) * t;
-        };
+        const double s = fraction + static_cast<double>(cell.bend) * fraction * (fraction - 1);
         const double to_acceleration = 2 * units_.speed() / units_.dt;  // from half a step's kick
-        const double a_r = to_acceleration * blend(cell.r_value, cell.r_i, cell.r_j, cell.r_ij);
-        const double a_theta = to_acceleration * blend(cell.theta_value, cell.theta_i, cell.theta_j, cell.theta_ij);
-        const double half_turn = static_cast<double>(force_.turn()[i]) + static_cast<double>(force_.turn_rise()[i]) * s;
+        const double a_r = to_acceleration * (1 + static_cast<double>(cell.slope) * (fraction - 0.5)) *
+                           (static_cast<double>(cell.radial) + static_cast<double>(cell.radial_rise) * t);
+        const double a_theta =
+            to_acceleration * (static_cast<double>(cell.along) + static_cast<double>(cell.along_rise) * s);
+        const double half_turn = static_cast<double>(cell.turn) + static_cast<double>(cell.turn_rise) * s;
         const double gamma = std::sqrt(1 + (orbit[2] * orbit[2] + orbit[3] * orbit[3]) / (kLightSpeed * kLightSpeed));
         const double turn = 2 * half_turn / units_.dt / gamma;  // rad/s; negative: q = -e
         const double cosine = orbit[0] / r, sine = orbit[1] / r;

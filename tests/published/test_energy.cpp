@@ -30,11 +30,9 @@ std::vector<double> random_potential() {
 /// Work of the radial force through cell (i, j) at azimuthal share t, V: Simpson's rule, exact for these parabolas.
 double radial_work(const ForceTable& force, int i, int j, double t) {
     const CellForce& cell = force.cells()[static_cast<std::size_t>(i) * force.stride() + static_cast<std::size_t>(j)];
-    const double bend = 1 / (2 * (kUnits.cathode_cells() + i) + 1);
     const auto kick = [&](double f) {
-        const double s = f * (1 + bend * (f - 1));
-        return static_cast<double>(cell.r_value) + static_cast<double>(cell.r_i) * s +
-               (static_cast<double>(cell.r_j) + static_cast<double>(cell.r_ij) * s) * t;
+        return (static_cast<double>(cell.radial) + static_cast<double>(cell.radial_rise) * t) *
+               (1 + static_cast<double>(cell.slope) * (f - 0.5));
     };
     return (kick(0) + 4 * kick(0.5) + kick(1)) / 6 / kUnits.half_kick(1) * kUnits.grid.dr();
 }
@@ -42,8 +40,7 @@ double radial_work(const ForceTable& force, int i, int j, double t) {
 /// Work of the azimuthal force along the inner arc of cell (i, j), V.
 double azimuthal_work(const ForceTable& force, int i, int j) {
     const CellForce& cell = force.cells()[static_cast<std::size_t>(i) * force.stride() + static_cast<std::size_t>(j)];
-    const double kick = static_cast<double>(cell.theta_value) + 0.5 * static_cast<double>(cell.theta_j);
-    return kick / kUnits.half_kick(1) * kUnits.grid.radius(i) * kUnits.grid.dtheta();
+    return static_cast<double>(cell.along) / kUnits.half_kick(1) * kUnits.grid.radius(i) * kUnits.grid.dtheta();
 }
 
 /// A surface field that shapes the first cell as space-charge-limited emission does.

@@ -95,7 +95,7 @@ TEST_CASE("an electron may not leap over the grid") {
     Deck deck = good_deck();
     deck.grid.radial_cells = 120;  // 20.8 um; 3.75e7 m/s at 4.1 kV
     deck.clock.step = 2e-12;
-    CHECK(finding(deck, "radial cells in a step").starts_with("warning: an electron at the full voltage crosses 3.6"));
+    CHECK(finding(deck, "radial cells in a step").starts_with("warning: an electron at the full voltage crosses 3.7"));
     deck.clock.step = 4e-12;
     CHECK(finding(deck, "radial cells in a step").starts_with("fatal: "));
 }

@@ -60,7 +60,7 @@ TEST_CASE("the lines, word by word") {
         "status       settled; means from 62.4 to 200.0 ns of 200.0 ns",
         "current      1.65 A (+/- 0.73 %) at 4.2 kV",
         "input        6.93 kW (+/- 0.72 %)",
-        "power        5.31 kW (+/- 0.75 %) from the electrons, 4.8 kW into the load, 510 W lost in the walls",
+        "power        5.31 kW (+/- 0.75 %) from the electrons: 4.8 kW to the load, 510 W to the walls",
         "efficiency   76.6 +/- 0.4 % electronic, 69.2 +/- 0.4 % in total",
         "mode         5 (the pi mode), vane voltage 1.89 kV (+/- 0.42 %)",
         "spokes       5, bunching 0.43 of 1; hub radius 2.51 mm",
