@@ -3,7 +3,6 @@
 
 #include <fmt/format.h>
 #include <hdf5.h>
-#include <openssl/evp.h>
 #include <unistd.h>
 
 #include <array>
@@ -17,6 +16,7 @@
 #include <utility>
 
 #include "diagnostics/whole_file.hpp"
+#include "inputs/digest.hpp"
 #include "inputs/errors.hpp"
 
 namespace spokewright {
@@ -86,10 +86,7 @@ void require_readable(const std::string& path) {
 
 /// The last line of our files, behind what HDF5 reads.
 std::string seal(std::string_view bytes) {
-    std::array<unsigned char, EVP_MAX_MD_SIZE> digest{};
-    unsigned length = 0;
-    EVP_Digest(bytes.data(), bytes.size(), digest.data(), &length, EVP_sha256(), nullptr);
-    return fmt::format("\nsha256 {:02x}\n", fmt::join(digest.data(), digest.data() + length, ""));
+    return fmt::format("\nsha256 {}\n", sha256_hex(bytes));
 }
 
 /// Chunked, so that it can carry a checksum; at most some 128 k elements a chunk.

@@ -2,7 +2,6 @@
 #include "inputs/deck_reader.hpp"
 
 #include <fmt/format.h>
-#include <openssl/evp.h>
 
 #include <algorithm>
 #include <array>
@@ -12,6 +11,7 @@
 
 #include "inputs/deck_keys.hpp"
 #include "inputs/deck_values.hpp"
+#include "inputs/digest.hpp"
 #include "inputs/errors.hpp"
 #include "inputs/text_file.hpp"
 
@@ -135,15 +135,6 @@ std::string resolved_text(const std::vector<std::optional<std::string>>& texts) 
                            : fmt::format("# {}: not in force\n", keys[i].name);
     }
     return result;
-}
-
-std::string sha256_hex(const std::string& bytes) {
-    std::array<unsigned char, EVP_MAX_MD_SIZE> digest{};
-    unsigned length = 0;
-    if (EVP_Digest(bytes.data(), bytes.size(), digest.data(), &length, EVP_sha256(), nullptr) != 1) {
-        throw std::runtime_error("SHA-256 is not available in this OpenSSL");
-    }
-    return fmt::format("{:02x}", fmt::join(digest.data(), digest.data() + length, ""));
 }
 
 }  // namespace

@@ -7,6 +7,7 @@
 #include <span>
 
 #include "fields/aligned.hpp"
+#include "pic/particle_kernel.hpp"
 
 namespace spokewright {
 
@@ -22,6 +23,8 @@ public:
     std::size_t size() const { return r.size(); }
     void append(const Electron& electron);
     Electron at(std::size_t index) const { return {r[index], theta[index], u_r[index], u_theta[index]}; }
+    ElectronArrays arrays() { return {r.data(), theta.data(), u_r.data(), u_theta.data()}; }
+    ElectronView view() const { return {r.data(), theta.data(), u_r.data(), u_theta.data()}; }
     void reserve(std::size_t capacity);
     void resize(std::size_t size);
 

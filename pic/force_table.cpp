@@ -3,10 +3,7 @@
 
 namespace spokewright {
 
-ForceTable::ForceTable(const StepUnits& units)
-    : units_(units),
-      stride_(static_cast<std::size_t>(units.grid.n_theta) + 2),
-      cells_(static_cast<std::size_t>(units.grid.n_r) * stride_) {}
+ForceTable::ForceTable(const StepUnits& units) : units_(units), cells_(units.table_cells()) {}
 
 void ForceTable::update(std::span<const double> potential, const SurfaceField& surface,
                         std::span<const double> magnetic) {
@@ -25,7 +22,7 @@ void ForceTable::update(std::span<const double> potential, const SurfaceField& s
         const auto turn_rise = static_cast<float>(units_.half_turn(magnetic[i + 1] - magnetic[i]));
         const double* inner = potential.data() + i * width;
         const double* outer = inner + width;
-        CellForce* row = cells_.data() + i * stride_;
+        CellForce* row = cells_.data() + i * units_.cell_stride();
         for (std::size_t j = 0; j < width; ++j) {
             const std::size_t next = j + 1 == width ? 0 : j + 1;
             const double drop = outer[j] - inner[j];

@@ -21,7 +21,7 @@ double vacuum_capacitance(const TubeSettings& tube) {
 
 }  // namespace
 
-InteractionSpace::InteractionSpace(const Deck& deck, int threads)
+InteractionSpace::InteractionSpace(const Deck& deck, int threads, InstructionSet set)
     : deck_(deck),
       units_{grid_of(deck), deck.clock.step},
       macro_charge_(macro_charge_of(deck)),
@@ -31,14 +31,16 @@ InteractionSpace::InteractionSpace(const Deck& deck, int threads)
       poisson_(units_.grid),
       surface_(units_.grid),
       force_(units_),
-      push_(units_, threads),
-      scatter_(units_, macro_charge_, threads),
+      push_(units_, threads, set),
+      scatter_(units_, macro_charge_, threads, set),
+      sums_(units_, set),
       walls_(units_, deck),
       cathode_(deck, units_, macro_charge_),
       wall_(static_cast<std::size_t>(poisson_.harmonics())),
       potential_(units_.grid.nodes()),
       modal_charge_(resonators_.all().size()),
-      induced_(resonators_.all().size()) {
+      induced_(resonators_.all().size()),
+      row_current_(static_cast<std::size_t>(units_.grid.n_r) + 1) {
     const VaneWall wall(deck.tube.vane_count, deck.tube.gap_share);
     for (const Resonator& resonator : resonators_.all()) {
         pattern_nodes_.push_back(wall.profile_at_nodes(resonator.pattern.vanes, units_.grid.n_theta));
@@ -122,22 +124,12 @@ void InteractionSpace::solve_field() {
 
 void InteractionSpace::update_self_field() {
     // Azimuthal current of each row, A/m: charge times angular speed / 2 pi, shared between rows like the charge.
-    const auto bend = radial_bend(units_);
-    const double c2 = units_.light() * units_.light();
-    std::vector<double> turns(static_cast<std::size_t>(units_.grid.n_r) + 1, 0.0);
-    for (std::size_t p = 0; p < store_.size(); ++p) {
-        const CellShare at = cell_share(store_.r[p], store_.theta[p], bend.data());
-        const double u_r = static_cast<double>(store_.u_r[p]);
-        const double u_theta = static_cast<double>(store_.u_theta[p]);
-        const double gamma = std::sqrt(1 + (u_r * u_r + u_theta * u_theta) / c2);
-        const double angular = u_theta / (gamma * (units_.cathode_cells() + store_.r[p] * (1.0 / kRadialOne)));
-        turns[static_cast<std::size_t>(at.i)] += angular * (1 - static_cast<double>(at.radial));
-        turns[static_cast<std::size_t>(at.i) + 1] += angular * static_cast<double>(at.radial);
+    std::fill(row_current_.begin(), row_current_.end(), 0.0);
+    sums_.add_angular_speed(store_, row_current_);
+    for (double& current : row_current_) {
+        current *= macro_charge_ / (2 * kPi * units_.grid.axial_height);
     }
-    for (double& current : turns) {
-        current *= macro_charge_ / (2 * kPi * units_.dt * units_.grid.axial_height);
-    }
-    magnet_.set_self_field(turns);
+    magnet_.set_self_field(row_current_);
 }
 
 void InteractionSpace::place_electron(double radius, double theta, double u_r, double u_theta) {

@@ -13,6 +13,7 @@
 #include "fields/supply.hpp"
 #include "fields/surface_field.hpp"
 #include "pic/cathode.hpp"
+#include "pic/electron_sums.hpp"
 #include "pic/force_table.hpp"
 #include "pic/push.hpp"
 #include "pic/scatter.hpp"
@@ -32,7 +33,8 @@ struct SpaceState {
 
 class InteractionSpace {
 public:
-    InteractionSpace(const Deck& deck, int threads);
+    /// Threads and instruction set change the time a step takes, never its result.
+    explicit InteractionSpace(const Deck& deck, int threads = 1, InstructionSet set = fastest_instruction_set());
 
     /// One step. Throws NumericsError (see Scatter).
     const Tally& step();
@@ -75,6 +77,7 @@ private:
     ElectronStore store_;
     Push push_;
     Scatter scatter_;
+    ElectronSums sums_;
     Walls walls_;
     Cathode cathode_;
 
@@ -84,6 +87,7 @@ private:
     AlignedVector<double> potential_;                    // V, [n_r + 1][n_theta]
     std::vector<double> modal_charge_;                   // C, space charge times weighting potential, [resonators]
     std::vector<double> induced_;                        // C within the step, [resonators]
+    std::vector<double> row_current_;                    // A/m, of the azimuthal motion, [n_r + 1]
     double whole_anode_charge_ = 0;                      // the same for the whole anode
     std::vector<ModeState> mode_states_;
     Tally tally_;

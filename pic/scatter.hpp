@@ -1,21 +1,24 @@
 // SPDX-License-Identifier: MIT
 // Charge of the electrons on the grid's nodes, by area weighting, summed as integers: exact, and the same in any order
-// and on any number of threads. Four counters a cell in units of 2^-18 macro-electron.
+// and on any number of threads. The deposit itself is in kernel_lanes.hpp.
 #pragma once
 
 #include <span>
 #include <vector>
 
-#include "pic/cell_share.hpp"
 #include "pic/electron_store.hpp"
+#include "pic/particle_kernel.hpp"
+#include "pic/step_units.hpp"
 
 namespace spokewright {
 
 class Scatter {
 public:
-    Scatter(const StepUnits& units, double macro_charge, int threads);
+    Scatter(const StepUnits& units, double macro_charge, int threads, InstructionSet set = fastest_instruction_set());
 
-    /// Deposits every electron. Throws NumericsError when a cell held more than its counters can (8191 electrons).
+    /// Deposits every electron: azimuthal share linear in theta, radial share linear in r^2, so that a uniform density
+    /// deposits a uniform density; each share to 2^-18 macro-electron. Throws NumericsError when a cell held more
+    /// than its counters can (8191 electrons).
     void deposit(const ElectronStore& store);
 
     /// C, [n_r + 1][n_theta].
@@ -23,22 +26,16 @@ public:
     /// The grid's total in macro-electrons, from the integer counters: equals the number of electrons.
     std::int64_t scattered_electrons() const { return total_ / kChargeOne; }
 
-    static constexpr std::int32_t kChargeOne = 1 << 18;
-
 private:
-    struct alignas(16) Corners {
-        std::int32_t inner, inner_next, outer, outer_next;  // (i, j), (i, j+1), (i+1, j), (i+1, j+1)
-    };
-    void deposit_range(const ElectronStore& store, std::size_t begin, std::size_t end, Corners* cells) const;
-    void reduce();
+    void sum_nodes();
 
     StepUnits units_;
+    ParticlePlan plan_;
+    const ParticleKernel& kernel_;
     double macro_charge_;
     int threads_;
-    std::size_t stride_;  // n_theta + 2, as in ForceTable
-    AlignedVector<float> bend_;
-    std::vector<AlignedVector<Corners>> thread_cells_;  // [threads][n_r * stride]
-    AlignedVector<std::int64_t> node_sum_;              // [n_r + 1][n_theta]
+    std::vector<AlignedVector<CellCharge>> thread_cells_;  // [threads][table_cells]
+    AlignedVector<std::int64_t> node_sum_;                 // [n_r + 1][n_theta]
     AlignedVector<double> node_charge_;
     std::int64_t total_ = 0;
 };

@@ -44,7 +44,7 @@ SpaceView InteractionSpace::view() {
             charge,
             potential_,
             mode_states_,
-            push_.kinetic_energy_eV(store_, force_) * macro_weight() * kElementaryCharge,
+            sums_.kinetic_energy_eV(store_, force_) * macro_weight() * kElementaryCharge,
             0.5 * energy,
             resonators_.energy(),
             magnet_.self_field_share(),

@@ -1,23 +1,18 @@
 // SPDX-License-Identifier: MIT
-// The electrons' own units: lengths in radial cells (dr), times in steps (dt), angles in azimuthal cells (dtheta).
-// Positions are fixed point: 24 fraction bits in r, 22 in theta, so that cell, fraction and wrap are integer
-// operations.
+// The electrons' own units: lengths in radial cells (dr), times in steps (dt), angles in azimuthal cells (dtheta);
+// positions in the fixed point of fixed_point.hpp.
 #pragma once
 
 #include <cmath>
+#include <cstddef>
 #include <cstdint>
 
 #include "fields/polar_grid.hpp"
 #include "inputs/constants.hpp"
+#include "pic/fixed_point.hpp"
+#include "pic/particle_kernel.hpp"
 
 namespace spokewright {
-
-inline constexpr int kRadialBits = 24;     // 31 - 24 bits: up to 127 radial cells
-inline constexpr int kAzimuthalBits = 22;  // 31 - 22 bits: up to 511 azimuthal cells
-inline constexpr std::int32_t kRadialOne = 1 << kRadialBits;
-inline constexpr std::int32_t kAzimuthalOne = 1 << kAzimuthalBits;
-inline constexpr std::int32_t kRadialMask = kRadialOne - 1;
-inline constexpr std::int32_t kAzimuthalMask = kAzimuthalOne - 1;
 
 struct StepUnits {
     PolarGrid grid;
@@ -30,14 +25,27 @@ struct StepUnits {
     double half_kick(double field) const { return -kElementaryCharge / kElectronMass * field * 0.5 * dt / speed(); }
     /// Tangent of half the gyration angle in one step at gamma = 1, for a field in T. Negative for B > 0: q = -e.
     double half_turn(double field) const { return -kElementaryCharge / kElectronMass * field * 0.5 * dt; }
+    /// Kinetic energy in eV of u^2 / (1 + gamma) = 1, u in velocity units.
+    double energy_unit_eV() const { return kElectronMass * speed() * speed() / kElementaryCharge; }
     /// Kinetic energy in eV of a squared gamma v given in velocity units.
     double energy_eV(double u_squared) const {
-        const double c_squared = light() * light();
-        const double gamma = std::sqrt(1 + u_squared / c_squared);
-        return u_squared / (c_squared * (1 + gamma)) * kElectronMass * kLightSpeed * kLightSpeed / kElementaryCharge;
+        const double gamma = std::sqrt(1 + u_squared / (light() * light()));
+        return energy_unit_eV() * u_squared / (1 + gamma);
     }
     std::int32_t radial_end() const { return grid.n_r << kRadialBits; }
     std::int32_t azimuthal_end() const { return grid.n_theta << kAzimuthalBits; }
+    /// Cells from one row of a cell table to the next. A power of two would map whole columns to the same cache sets.
+    std::size_t cell_stride() const { return static_cast<std::size_t>(grid.n_theta) + 2; }
+    std::size_t table_cells() const { return static_cast<std::size_t>(grid.n_r) * cell_stride(); }
+
+    ParticlePlan plan() const {
+        return {static_cast<std::int32_t>(cell_stride()),
+                radial_end(),
+                azimuthal_end(),
+                static_cast<float>(1 / (light() * light())),
+                static_cast<float>(cathode_cells()),
+                static_cast<float>(2 * kAzimuthalOne / grid.dtheta())};
+    }
 };
 
 }  // namespace spokewright

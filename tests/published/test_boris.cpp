@@ -66,7 +66,7 @@ public:
         if (!(cells >= 0 && cells < units_.grid.n_r)) throw std::range_error("the orbit left the gap");
         const auto i = static_cast<std::size_t>(cells), j = static_cast<std::size_t>(azimuth);
         const double fraction = cells - std::floor(cells), t = azimuth - std::floor(azimuth);
-        const CellForce& cell = force_.cells()[i * force_.stride() + j];
+        const CellForce& cell = force_.cells()[i * units_.cell_stride() + j];
         const double s = fraction + static_cast<double>(cell.bend) * fraction * (fraction - 1);
         const double to_acceleration = 2 * units_.speed() / units_.dt;  // from half a step's kick
         const double a_r = to_acceleration * (1 + static_cast<double>(cell.slope) * (fraction - 0.5)) *

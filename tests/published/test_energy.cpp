@@ -29,7 +29,8 @@ std::vector<double> random_potential() {
 
 /// Work of the radial force through cell (i, j) at azimuthal share t, V: Simpson's rule, exact for these parabolas.
 double radial_work(const ForceTable& force, int i, int j, double t) {
-    const CellForce& cell = force.cells()[static_cast<std::size_t>(i) * force.stride() + static_cast<std::size_t>(j)];
+    const CellForce& cell =
+        force.cells()[static_cast<std::size_t>(i) * kUnits.cell_stride() + static_cast<std::size_t>(j)];
     const auto kick = [&](double f) {
         return (static_cast<double>(cell.radial) + static_cast<double>(cell.radial_rise) * t) *
                (1 + static_cast<double>(cell.slope) * (f - 0.5));
@@ -39,7 +40,8 @@ double radial_work(const ForceTable& force, int i, int j, double t) {
 
 /// Work of the azimuthal force along the inner arc of cell (i, j), V.
 double azimuthal_work(const ForceTable& force, int i, int j) {
-    const CellForce& cell = force.cells()[static_cast<std::size_t>(i) * force.stride() + static_cast<std::size_t>(j)];
+    const CellForce& cell =
+        force.cells()[static_cast<std::size_t>(i) * kUnits.cell_stride() + static_cast<std::size_t>(j)];
     return static_cast<double>(cell.along) / kUnits.half_kick(1) * kUnits.grid.radius(i) * kUnits.grid.dtheta();
 }
 

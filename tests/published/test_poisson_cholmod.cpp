@@ -2,7 +2,6 @@
 // Source: Y. Chen, T. A. Davis, W. W. Hager & S. Rajamanickam, ACM Trans. Math. Softw. 35, 22 (2008): CHOLMOD, sparse
 // Cholesky, as an independent solver of the same finite-volume equations.
 #include <doctest/doctest.h>
-#include <suitesparse/cholmod.h>
 
 #include <algorithm>
 #include <cmath>
@@ -10,84 +9,11 @@
 #include <vector>
 
 #include "fields/poisson.hpp"
+#include "tests/cholmod_poisson.hpp"
 
 using namespace spokewright;
 
-namespace {
-
-/// The equations as a matrix over the inner nodes: radial fluxes through ln(r_{i+1} / r_i), azimuthal ones through the
-/// integral of dr / r over the cell, charge on the right.
-class CholmodPoisson {
-public:
-    explicit CholmodPoisson(const PolarGrid& grid) : grid_(grid) { cholmod_start(&common_); }
-    ~CholmodPoisson() { cholmod_finish(&common_); }
-    CholmodPoisson(const CholmodPoisson&) = delete;
-    CholmodPoisson& operator=(const CholmodPoisson&) = delete;
-
-    std::vector<double> solve(const std::vector<double>& charge, const std::vector<double>& wall) {
-        const auto unknowns = static_cast<std::size_t>((grid_.n_r - 1) * grid_.n_theta);
-        entries_ = cholmod_allocate_triplet(unknowns, unknowns, 6 * unknowns, -1, CHOLMOD_REAL, &common_);
-        right_ = cholmod_zeros(unknowns, 1, CHOLMOD_REAL, &common_);
-        for (int i = 1; i < grid_.n_r; ++i) {
-            for (int j = 0; j < grid_.n_theta; ++j) {
-                add_node(i, j, charge, wall);
-            }
-        }
-        cholmod_sparse* matrix = cholmod_triplet_to_sparse(entries_, 0, &common_);
-        cholmod_factor* factor = cholmod_analyze(matrix, &common_);
-        cholmod_factorize(matrix, factor, &common_);
-        cholmod_dense* solution = cholmod_solve(CHOLMOD_A, factor, right_, &common_);
-
-        std::vector<double> potential(grid_.nodes(), 0.0);
-        const double* inner = static_cast<const double*>(solution->x);
-        std::copy(inner, inner + unknowns, potential.begin() + grid_.n_theta);
-        std::copy(wall.begin(), wall.end(), potential.end() - grid_.n_theta);
-        cholmod_free_dense(&solution, &common_);
-        cholmod_free_factor(&factor, &common_);
-        cholmod_free_sparse(&matrix, &common_);
-        cholmod_free_dense(&right_, &common_);
-        cholmod_free_triplet(&entries_, &common_);
-        return potential;
-    }
-
-private:
-    int unknown(int i, int j) const { return (i - 1) * grid_.n_theta + (j + grid_.n_theta) % grid_.n_theta; }
-
-    void add(int row, int column, double value) {
-        if (row < column) return;  // the lower triangle is all that CHOLMOD reads
-        static_cast<int*>(entries_->i)[entries_->nnz] = row;
-        static_cast<int*>(entries_->j)[entries_->nnz] = column;
-        static_cast<double*>(entries_->x)[entries_->nnz] = value;
-        ++entries_->nnz;
-    }
-
-    void add_node(int i, int j, const std::vector<double>& charge, const std::vector<double>& wall) {
-        const double radius = grid_.radius(i), dr = grid_.dr(), dtheta = grid_.dtheta();
-        const double scale = kVacuumPermittivity * grid_.axial_height;
-        const double inward = scale * dtheta / std::log(radius / (radius - dr));
-        const double outward = scale * dtheta / std::log((radius + dr) / radius);
-        const double around = scale * std::log((radius + dr / 2) / (radius - dr / 2)) / dtheta;
-        const int row = unknown(i, j);
-        double* right = static_cast<double*>(right_->x);
-        right[row] += charge[grid_.node(i, j)];
-        add(row, row, inward + outward + 2 * around);
-        if (i > 1) add(row, unknown(i - 1, j), -inward);
-        if (i + 1 < grid_.n_r) {
-            add(row, unknown(i + 1, j), -outward);
-        } else {
-            right[row] += outward * wall[static_cast<std::size_t>(j)];
-        }
-        add(row, unknown(i, j - 1), -around);
-        add(row, unknown(i, j + 1), -around);
-    }
-
-    PolarGrid grid_;
-    cholmod_common common_{};
-    cholmod_triplet* entries_ = nullptr;
-    cholmod_dense* right_ = nullptr;
-};
-
-}  // namespace
+namespace {}  // namespace
 
 TEST_CASE("Poisson agrees with sparse Cholesky on the same matrix") {
     std::mt19937 random(7);

@@ -1,0 +1,39 @@
+// SPDX-License-Identifier: MIT
+#include "pic/electron_sums.hpp"
+
+#include <algorithm>
+#include <numeric>
+
+namespace spokewright {
+
+double ElectronSums::kinetic_energy_eV(const ElectronStore& store, const ForceTable& force) const {
+    Block energy;
+    std::array<double, 8> sums{};  // eight chains of additions run side by side
+    for (std::size_t begin = 0; begin < store.size(); begin += kBlock) {
+        const std::size_t end = std::min(begin + kBlock, store.size());
+        kernel_.kinetic(plan_, force.cells(), store.view(), begin, end, energy.data());
+        std::fill(energy.begin() + static_cast<std::ptrdiff_t>(end - begin), energy.end(), 0.0f);
+        for (std::size_t k = 0; k < kBlock; k += sums.size()) {
+            for (std::size_t chain = 0; chain < sums.size(); ++chain) {
+                sums[chain] += static_cast<double>(energy[k + chain]);
+            }
+        }
+    }
+    return units_.energy_unit_eV() * std::accumulate(sums.begin(), sums.end(), 0.0);
+}
+
+void ElectronSums::add_angular_speed(const ElectronStore& store, std::span<double> rows) const {
+    Block inner, outer;
+    const double per_second = 1 / units_.dt;
+    for (std::size_t begin = 0; begin < store.size(); begin += kBlock) {
+        const std::size_t end = std::min(begin + kBlock, store.size());
+        kernel_.turning(plan_, store.view(), begin, end, inner.data(), outer.data());
+        for (std::size_t p = begin; p < end; ++p) {
+            const auto row = static_cast<std::size_t>(store.r[p] >> kRadialBits);
+            rows[row] += per_second * static_cast<double>(inner[p - begin]);
+            rows[row + 1] += per_second * static_cast<double>(outer[p - begin]);
+        }
+    }
+}
+
+}  // namespace spokewright

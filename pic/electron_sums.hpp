@@ -1,0 +1,37 @@
+// SPDX-License-Identifier: MIT
+// Sums over the electrons that a sample or the self field wants, in blocks of fixed size and in the store's order: the
+// same to the last bit for any instruction set.
+#pragma once
+
+#include <array>
+#include <span>
+
+#include "pic/electron_store.hpp"
+#include "pic/force_table.hpp"
+#include "pic/particle_kernel.hpp"
+
+namespace spokewright {
+
+class ElectronSums {
+public:
+    ElectronSums(const StepUnits& units, InstructionSet set)
+        : units_(units), plan_(units.plan()), kernel_(particle_kernel(set)) {}
+
+    /// Kinetic energy at time n of all electrons, eV a macro-electron: u is carried half an electric kick forward,
+    /// which is where Boris's scheme passes time n.
+    double kinetic_energy_eV(const ElectronStore& store, const ForceTable& force) const;
+
+    /// Adds the angular speed of the electrons to the rows, shared like their charge: rad/s a macro-electron,
+    /// [n_r + 1].
+    void add_angular_speed(const ElectronStore& store, std::span<double> rows) const;
+
+private:
+    static constexpr std::size_t kBlock = 1024;
+    using Block = std::array<float, kBlock>;
+
+    StepUnits units_;
+    ParticlePlan plan_;
+    const ParticleKernel& kernel_;
+};
+
+}  // namespace spokewright
