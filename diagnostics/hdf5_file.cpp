@@ -79,6 +79,10 @@ Id string_type() {
 }
 
 void require_readable(const std::string& path) {
+    std::error_code ignored;
+    if (std::filesystem::is_directory(path, ignored)) {
+        throw FileError(fmt::format("{}: cannot read: it is a folder; give a file", path));
+    }
     if (::access(path.c_str(), R_OK) != 0) {
         throw FileError(fmt::format("{}: cannot read: {}", path, std::strerror(errno)));
     }

@@ -14,8 +14,10 @@ namespace {
 
 // "None" beside the field-free space-charge-limited current: a smooth bore 3 % beyond Hull cutoff stays below 1 %.
 constexpr double kNoCurrentShare = 0.01;
-// Spokes show when they beat the shot noise of the thousand or so macro-electrons beyond mid-gap (3 %).
+// Spokes show when they beat 5 % and the shot noise of N macro-electrons beyond mid-gap: a random cloud has harmonics
+// of about 0.9 / sqrt(N) of its charge, and the strongest of two dozen rarely passes three times that.
 constexpr double kSpokeShare = 0.05;
+constexpr double kSpokeNoise = 3;
 // A ledger that is open by more than this is worth a word; the model's own trial closed to 0.2 %.
 constexpr double kImbalanceWarning = 0.01;
 // A mode that doubles its energy between neighbouring sixths and is above 1 % of the anode voltage is still starting.
@@ -68,6 +70,7 @@ private:
     void describe_heat(const WallBook& anode);
     std::string judge_status() const;
     const ModeEntry* growing_mode() const;
+    const ModeEntry* too_short_for() const;
     void add_warnings();
 
     double threshold(const ModeEntry& mode) const {
@@ -161,7 +164,8 @@ void Summariser::describe_spokes() {
     }
     if (strongest == 0) return;
     const MeanWithError strength = batch_ratio(harmonic(strongest), harmonic(0));
-    if (!(strength.mean >= kSpokeShare)) return;
+    const double electrons = mean("charge_harmonic_0_C").mean / (facts_.macro_weight * kElementaryCharge);
+    if (!(strength.mean >= std::max(kSpokeShare, kSpokeNoise / std::sqrt(std::abs(electrons))))) return;
     s_.spoke_count = strongest;
     s_.spoke_strength = strength;
 }
@@ -172,7 +176,7 @@ void Summariser::balance() {
     s_.energy_imbalance = energy_balance(record_).imbalance();
     if (s_.averaged_to < s_.averaged_from + 2) return;
     const double window = energy_balance(record_, s_.averaged_from, s_.averaged_to - 1).imbalance();
-    s_.energy_imbalance = std::max(s_.energy_imbalance, window);
+    if (std::isfinite(window)) s_.energy_imbalance = std::max(s_.energy_imbalance, window);
 }
 
 void Summariser::describe_heat(const WallBook& anode) {
@@ -204,6 +208,15 @@ const ModeEntry* Summariser::growing_mode() const {
     return nullptr;
 }
 
+/// A mode that could not have lasted its dwell twice within the flat top: too early to call it skipped.
+const ModeEntry* Summariser::too_short_for() const {
+    const double watched_ns = time_ns_[flat_.last - 1] - time_ns_[flat_.first];
+    for (const ModeEntry& mode : deck_.circuit.modes) {
+        if (watched_ns * 1e-9 * mode.frequency < 2 * kDwellPeriods) return &mode;
+    }
+    return nullptr;
+}
+
 std::string Summariser::judge_status() const {
     if (flat_.first >= flat_.last) return "not settled";
     if (s_.dominant_mode > 0) return settling_.settled ? "settled" : "not settled";
@@ -215,7 +228,8 @@ std::string Summariser::judge_status() const {
         space_charge_limited_current_per_length(voltage, deck_.tube.cathode_radius, deck_.tube.anode_radius);
     if (hopeless && std::abs(s_.anode_current_A.mean) < kNoCurrentShare * free_current) return "cut off";
     if (deck_.circuit.modes.empty()) return settling_.settled ? "settled" : "not settled";
-    return facts_.interrupted || growing_mode() != nullptr ? "not settled" : "no oscillation";
+    const bool too_early = facts_.interrupted || growing_mode() != nullptr || too_short_for() != nullptr;
+    return too_early ? "not settled" : "no oscillation";
 }
 
 void Summariser::add_warnings() {
@@ -227,11 +241,18 @@ void Summariser::add_warnings() {
     if (s_.status == "not settled" && !settling_.reason.empty())
         s_.warnings.push_back("not settled: " + settling_.reason);
     if (s_.dominant_mode == 0 && flat_.first < flat_.last) {
-        if (const ModeEntry* mode = growing_mode()) {
-            s_.warnings.push_back(fmt::format("mode {} is still growing: lengthen clock.end_time_ns", mode->number));
+        const ModeEntry* short_for = too_short_for();
+        const ModeEntry* growing = growing_mode();
+        if (s_.status == "not settled" && short_for != nullptr) {
+            s_.warnings.push_back(fmt::format(
+                "the flat top is shorter than {:.0f} periods of mode {}, too short to see a mode start: lengthen "
+                "clock.end_time_ns",
+                2 * kDwellPeriods, short_for->number));
+        } else if (growing != nullptr) {
+            s_.warnings.push_back(fmt::format("mode {} is still growing: lengthen clock.end_time_ns", growing->number));
         }
     }
-    if (s_.energy_imbalance > kImbalanceWarning) {
+    if (std::isfinite(s_.energy_imbalance) && s_.energy_imbalance > kImbalanceWarning) {
         s_.warnings.push_back(
             fmt::format("the energy ledger is open by {:.2g} %: lower clock.step_ps or raise "
                         "electrons.target_count",

@@ -178,6 +178,8 @@ Json summary_json(const Summary& s) {
             {"seed", s.seed},
             {"status", s.status},
             {"settled_from_ns", number(s.settled_from_ns)},
+            {"averaged_from_ns", number(s.averaged_from_ns)},
+            {"averaged_to_ns", number(s.averaged_to_ns)},
             {"end_time_ns", number(s.end_time_ns)},
             {"anode_voltage_V", mean_json(s.anode_voltage_V)},
             {"anode_current_A", mean_json(s.anode_current_A)},

@@ -35,7 +35,8 @@ private:
 };
 
 /// One-sided amplitude spectrum of a real record: a Hann window, scaled so that a sine of amplitude A in the middle of
-/// a bin reads A. Length n gives n/2 + 1 values; bin k is the frequency k / (n dt).
+/// a bin reads A (a constant, and the last bin, read double). Length n gives n/2 + 1 values; bin k is the frequency k /
+/// (n dt).
 std::vector<double> amplitude_spectrum(std::span<const double> record);
 
 }  // namespace spokewright

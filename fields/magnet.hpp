@@ -25,7 +25,7 @@ public:
     std::span<const double> self_field() const { return self_; }  // T, [n_r + 1]
     void restore_self_field(std::span<const double> self);
 
-    /// Largest |B_self| / |B_applied|.
+    /// Largest |B_self| / |B_applied| over the rows that have an applied field.
     double self_field_share() const;
 
 private:

@@ -30,11 +30,11 @@ public:
     VaneWall(int vane_count, double gap_share);
 
     int vane_count() const { return vane_count_; }
-    /// Wall value at angle theta (rad) for the vane values [N].
+    /// Wall value at angle theta (0..2 pi rad) for the vane values [N].
     double profile(std::span<const double> vanes, double theta) const;
     /// Wall values at n_theta equally spaced nodes from theta = 0, [n_theta].
     std::vector<double> profile_at_nodes(std::span<const double> vanes, int n_theta) const;
-    /// 2 i on vane i, 2 i + 1 in the slot that follows it in +theta.
+    /// 2 i on vane i, 2 i + 1 in the slot that follows it in +theta; theta in 0..2 pi rad.
     int sector(double theta) const;
 
 private:

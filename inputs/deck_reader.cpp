@@ -4,7 +4,6 @@
 #include <fmt/format.h>
 
 #include <algorithm>
-#include <array>
 #include <boost/program_options.hpp>
 #include <map>
 #include <sstream>

@@ -82,6 +82,9 @@ Checkpoint read_checkpoint(const std::string& path, const Deck& deck) {
     const auto theta = file.read<std::int32_t>("/electrons/theta");
     const auto u_r = file.read<float>("/electrons/u_r");
     const auto u_theta = file.read<float>("/electrons/u_theta");
+    if (theta.size() != r.size() || u_r.size() != r.size() || u_theta.size() != r.size()) {
+        throw FileError(fmt::format("{}: the electrons' arrays differ in length; start the run anew", path));
+    }
     for (std::size_t p = 0; p < r.size(); ++p) {
         space.electrons.append({r[p], theta[p], u_r[p], u_theta[p]});
     }

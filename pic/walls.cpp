@@ -4,6 +4,8 @@
 #include <algorithm>
 #include <cmath>
 
+#include "inputs/errors.hpp"
+
 namespace spokewright {
 namespace {
 
@@ -70,6 +72,11 @@ void Walls::strike(const ElectronStore& store, std::span<const std::uint32_t> hi
         const double u_r = static_cast<double>(electron.u_r);
         const double u_theta = static_cast<double>(electron.u_theta);
         const double energy = units_.energy_eV(u_r * u_r + u_theta * u_theta);
+        if (!std::isfinite(energy)) {
+            throw NumericsError(
+                "the momentum of an electron at a wall is no longer a finite number; lower clock.step_ps or check the "
+                "circuit's values");
+        }
         const std::int64_t units = std::llrint(energy / WallBook::kBookedEnergyUnit);
         const std::int32_t theta = crossing_angle(electron);
         const auto node = static_cast<std::size_t>(theta >> kAzimuthalBits);

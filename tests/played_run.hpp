@@ -83,7 +83,7 @@ struct PlayedRun {
                 // Density 1 up to mid-gap, 0.25 beyond, with spokes: 1 + 2 b cos m theta has |Q_m| / Q_0 = b.
                 const double density = 2 * i < grid.n_r ? 1 : 0.25;
                 const double wave = 1 + 2 * bunching * std::cos(spokes * grid.theta(j));
-                node_charge[grid.node(i, j)] = -1e-15 * density * wave * grid.node_volume(i) / grid.node_volume(0);
+                node_charge[grid.node(i, j)] = -1e-13 * density * wave * grid.node_volume(i) / grid.node_volume(0);
             }
         }
         const double time = static_cast<double>(step) * deck.clock.step;

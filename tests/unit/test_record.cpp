@@ -70,7 +70,7 @@ TEST_CASE("harmonics of the charge beyond mid-gap") {
     const double even = record.last("charge_harmonic_0_C");
     double expected = 0;  // rows 4 to 8 of 8, a quarter of the density
     const PolarGrid grid{1.95e-3, 4.45e-3, 9.5e-3, 8, 40};
-    for (int i = 4; i <= 8; ++i) expected += 40 * 1e-15 * 0.25 * grid.node_volume(i) / grid.node_volume(0);
+    for (int i = 4; i <= 8; ++i) expected += 40 * 1e-13 * 0.25 * grid.node_volume(i) / grid.node_volume(0);
     CHECK(relative_error(even, expected) < kRounding);
     CHECK(relative_error(record.last("charge_harmonic_5_C"), 0.4 * even) < kRounding);
     CHECK(record.last("charge_harmonic_4_C") < 1e-12 * even);  // FFT rounding

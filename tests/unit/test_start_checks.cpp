@@ -45,6 +45,22 @@ TEST_CASE("a step too long for the orbit, the plasma and the mode, with the step
     CHECK(finding(deck, "steps a period").starts_with("fatal: mode 4 has 8.9 steps a period"));
 }
 
+TEST_CASE("a load whose susceptance is no small addition") {
+    Deck deck = good_deck();
+    deck.circuit.modes.resize(1);
+    deck.circuit.modes[0].external_q = 10;
+    // Reflection 2/3 at 90 degrees: y = (1 - j 2/3) / (1 + j 2/3) has the imaginary part -12/13.
+    deck.load = {5, kPi / 2};
+    CHECK(finding(deck, "the load moves") == "");  // 12/13 / 20 = 4.6 %
+    deck.circuit.modes[0].external_q = 4;
+    CHECK(finding(deck, "the load moves") ==
+          "warning: the load moves mode " + std::to_string(deck.circuit.modes[0].number) +
+              " by 12 % of its frequency (good up to 5 %, hopeless above 25 %): lower load.vswr or raise "
+              "circuit.external_Q");
+    deck.circuit.modes[0].external_q = 1;
+    CHECK(finding(deck, "the load moves").starts_with("fatal: the load moves mode"));
+}
+
 TEST_CASE("the strongest field of a table sets the orbit") {
     Deck deck = good_deck();
     deck.magnet.table = {{1.9e-3, 0.5}, {2.2e-3, 0.15}, {4.5e-3, 0.15}};

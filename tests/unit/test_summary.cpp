@@ -98,6 +98,27 @@ TEST_CASE("a mode skip is no oscillation; one that still grows is not settled") 
     CHECK(early.warnings.at(0) == "stopped at 40.0 of 100.0 ns; continue with --resume");
 }
 
+TEST_CASE("a flat top too short to see a mode start is not settled, and says so") {
+    PlayedRun brief = locked_run();
+    brief.mode_voltage[1] = [](double) { return 20.0; };
+    brief.deck.clock.end_time = 12e-9;  // 7 ns of flat top, 17 periods of the pi mode
+    const Summary s = summary_of(brief, brief.deck.clock.end_time);
+    CHECK(s.status == "not settled");
+    REQUIRE(!s.warnings.empty());
+    CHECK(s.warnings.back() ==
+          "the flat top is shorter than 20 periods of mode 4, too short to see a mode start: lengthen "
+          "clock.end_time_ns");
+}
+
+TEST_CASE("a bunching that the shot noise of a few electrons could make is no spoke") {
+    PlayedRun noisy = locked_run();
+    noisy.bunching = 0.06;  // some 2000 macro-electrons beyond mid-gap: noise of 2 %, up to 7 %
+    CHECK(summary_of(noisy).spoke_count == 0);
+    PlayedRun bunched = locked_run();
+    bunched.bunching = 0.08;
+    CHECK(summary_of(bunched).spoke_count == 5);
+}
+
 TEST_CASE("below Hull and Hartree with nothing seen it is cut off; with current seen it is not") {
     PlayedRun run = locked_run();
     run.deck.supply.anode_voltage = 3000;  // Hartree 4.0 kV, Hull 9.7 kV

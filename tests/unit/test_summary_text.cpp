@@ -103,6 +103,8 @@ TEST_CASE("summary.json has its keys in order, means with half-widths, null for 
                                                "seed",
                                                "status",
                                                "settled_from_ns",
+                                               "averaged_from_ns",
+                                               "averaged_to_ns",
                                                "end_time_ns",
                                                "anode_voltage_V",
                                                "anode_current_A",
