@@ -17,7 +17,7 @@ namespace spokewright {
 
 class ForceTable {
 public:
-    explicit ForceTable(const StepUnits& units);
+    explicit ForceTable(const StepUnits& units, int threads = 1, InstructionSet set = fastest_instruction_set());
 
     /// From the potential (V, [n_r + 1][n_theta]), the shape of the first cell and the magnetic field of each row
     /// (T, [n_r + 1]).
@@ -28,6 +28,8 @@ public:
 
 private:
     StepUnits units_;
+    const ParticleKernel* kernel_;
+    int threads_;
     AlignedVector<CellForce> cells_;
 };
 

@@ -8,7 +8,7 @@
 namespace spokewright {
 namespace {
 
-constexpr int kSelfFieldEvery = 16;  // steps; the axisymmetric current changes over many gyrations
+constexpr int kSelfFieldEvery = 32;  // steps, a few gyrations: the axisymmetric current changes over many
 
 PolarGrid grid_of(const Deck& deck) {
     return {deck.tube.cathode_radius, deck.tube.anode_radius, deck.tube.axial_height, deck.grid.radial_cells,
@@ -30,7 +30,7 @@ InteractionSpace::InteractionSpace(const Deck& deck, int threads, InstructionSet
       supply_(deck.supply, vacuum_capacitance(deck.tube), deck.clock.step),
       poisson_(units_.grid),
       surface_(units_.grid),
-      force_(units_),
+      force_(units_, threads, set),
       push_(units_, threads, set),
       scatter_(units_, macro_charge_, threads, set),
       sums_(units_, set),

@@ -1,10 +1,10 @@
 // SPDX-License-Identifier: MIT
-#include "pic/kernel_lanes.hpp"
+#include "pic/kernel_loops.hpp"
 #include "pic/lanes_avx2.hpp"
 
 namespace spokewright {
 
 extern const ParticleKernel kAvx2Kernel;
-const ParticleKernel kAvx2Kernel = ParticleLoops<Avx2Lanes>::kernel();
+const ParticleKernel kAvx2Kernel = kernel_of<Avx2Lanes>();
 
 }  // namespace spokewright

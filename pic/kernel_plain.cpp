@@ -1,10 +1,10 @@
 // SPDX-License-Identifier: MIT
-#include "pic/kernel_lanes.hpp"
+#include "pic/kernel_loops.hpp"
 #include "pic/lanes_plain.hpp"
 
 namespace spokewright {
 
 extern const ParticleKernel kPlainKernel;
-const ParticleKernel kPlainKernel = ParticleLoops<PlainLanes>::kernel();
+const ParticleKernel kPlainKernel = kernel_of<PlainLanes>();
 
 }  // namespace spokewright

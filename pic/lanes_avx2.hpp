@@ -59,10 +59,25 @@ struct Avx2Lanes {
         return static_cast<std::uint32_t>(_mm256_movemask_ps(_mm256_castsi256_ps(inside))) ^ 0xFFU;
     }
 
+    static Real difference(const double* a, const double* b) {
+        const __m128 low = _mm256_cvtpd_ps(_mm256_sub_pd(_mm256_loadu_pd(a), _mm256_loadu_pd(b)));
+        const __m128 high = _mm256_cvtpd_ps(_mm256_sub_pd(_mm256_loadu_pd(a + 4), _mm256_loadu_pd(b + 4)));
+        return _mm256_insertf128_ps(_mm256_castps128_ps256(low), high, 1);
+    }
+
+    static void store_cells(CellForce* to, const Cells& c) {
+        Real front[4], back[4];
+        transpose(c.radial, c.radial_rise, c.along, c.along_rise, front);
+        transpose(c.slope, c.bend, c.turn, c.turn_rise, back);
+        // front[k] and back[k] hold the halves of cells k and k + 4.
+        for (std::size_t k = 0; k < 4; ++k) {
+            _mm256_store_ps(&to[k].radial, _mm256_permute2f128_ps(front[k], back[k], 0x20));
+            _mm256_store_ps(&to[k + 4].radial, _mm256_permute2f128_ps(front[k], back[k], 0x31));
+        }
+    }
+
     /// One cell a load, then an 8 x 8 transpose.
-    static Cells gather(const CellForce* cells, Int index) {
-        alignas(32) std::uint32_t at[kWidth];
-        spill(index, at);
+    static Cells gather(const CellForce* cells, const std::int32_t* at) {
         // Halves of electrons k and k + 4 side by side: the 4 x 4 transposes then leave electron k in lane k.
         const auto halves = [&](std::size_t k, const float CellForce::*half) {
             const __m128 low = _mm_load_ps(&(cells[at[k]].*half));
@@ -76,32 +91,25 @@ struct Avx2Lanes {
         return {front[0], front[1], front[2], front[3], back[0], back[1], back[2], back[3]};
     }
 
-    static void add_to_cells(CellCharge* cells, Int index, std::size_t count, Int inner, Int inner_next, Int outer,
-                             Int outer_next) {
-        alignas(32) std::uint32_t at[kWidth];
-        spill(index, at);
-        alignas(32) CellCharge corners[kWidth];
+    /// Writes the corners of each electron, 16 bytes, in the order of corner_place().
+    static void store_corners(CellCharge* to, Int inner, Int inner_next, Int outer, Int outer_next) {
         Real row[4];
         transpose(_mm256_castsi256_ps(inner), _mm256_castsi256_ps(inner_next), _mm256_castsi256_ps(outer),
                   _mm256_castsi256_ps(outer_next), row);
         // row[k] holds the corners of electrons k and k + 4.
         for (std::size_t k = 0; k < 4; ++k) {
-            _mm256_store_si256(reinterpret_cast<__m256i*>(&corners[2 * k]), _mm256_castps_si256(row[k]));
+            _mm256_store_si256(reinterpret_cast<__m256i*>(to + 2 * k), _mm256_castps_si256(row[k]));
         }
-        for (std::size_t k = 0; k < count; ++k) {
-            auto* cell = reinterpret_cast<__m128i*>(&cells[at[k]]);
-            const auto* corner = reinterpret_cast<const __m128i*>(&corners[2 * (k % 4) + k / 4]);
-            _mm_store_si128(cell, _mm_add_epi32(_mm_load_si128(cell), _mm_load_si128(corner)));
-        }
+    }
+    static std::size_t corner_place(std::size_t k) { return 2 * (k % 4) + k / 4; }
+
+    static void add(CellCharge& cell, const CellCharge& corners) {
+        auto* sum = reinterpret_cast<__m128i*>(&cell);
+        const auto* more = reinterpret_cast<const __m128i*>(&corners);
+        _mm_store_si128(sum, _mm_add_epi32(_mm_load_si128(sum), _mm_load_si128(more)));
     }
 
 private:
-    static void spill(Int index, std::uint32_t* at) {
-        _mm256_store_si256(reinterpret_cast<__m256i*>(at), index);
-        // Through memory: GCC would take the lanes out one by one, at twice the instructions.
-        asm volatile("" : "+m"(*reinterpret_cast<std::uint32_t(*)[kWidth]>(at)));
-    }
-
     /// 4 x 4 in each 128-bit lane.
     static void transpose(Real a, Real b, Real c, Real d, Real* out) {
         const __m256d ab_low = _mm256_castps_pd(_mm256_unpacklo_ps(a, b));

@@ -57,10 +57,32 @@ struct Avx512Lanes {
         return _mm512_cmple_epi32_mask(r, _mm512_setzero_si512()) | _mm512_cmpge_epi32_mask(r, all(end));
     }
 
+    static Real difference(const double* a, const double* b) {
+        const __m256 low = _mm512_cvtpd_ps(_mm512_sub_pd(_mm512_loadu_pd(a), _mm512_loadu_pd(b)));
+        const __m256 high = _mm512_cvtpd_ps(_mm512_sub_pd(_mm512_loadu_pd(a + 8), _mm512_loadu_pd(b + 8)));
+        return _mm512_insertf32x8(_mm512_castps256_ps512(low), high, 1);
+    }
+
+    static void store_cells(CellForce* to, const Cells& c) {
+        Real front[4], back[4];
+        transpose(c.radial, c.radial_rise, c.along, c.along_rise, front);
+        transpose(c.slope, c.bend, c.turn, c.turn_rise, back);
+        // front[k] and back[k] hold the halves of cells k, k + 4, k + 8, k + 12.
+        for (std::size_t k = 0; k < 4; ++k) {
+            const Real low = _mm512_shuffle_f32x4(front[k], back[k], _MM_SHUFFLE(1, 0, 1, 0));
+            const Real high = _mm512_shuffle_f32x4(front[k], back[k], _MM_SHUFFLE(3, 2, 3, 2));
+            const auto store_pair = [&](CellForce* first, Real halves) {  // fronts of two cells, then their backs
+                const Real pair = _mm512_shuffle_f32x4(halves, halves, _MM_SHUFFLE(3, 1, 2, 0));
+                _mm256_store_ps(&first[0].radial, _mm512_castps512_ps256(pair));
+                _mm256_store_ps(&first[4].radial, _mm512_extractf32x8_ps(pair, 1));
+            };
+            store_pair(to + k, low);
+            store_pair(to + k + 8, high);
+        }
+    }
+
     /// Two cells a load pair, then an 8 x 8 transpose in each half: a third of the time of hardware gathers.
-    static Cells gather(const CellForce* cells, Int index) {
-        alignas(64) std::uint32_t at[kWidth];
-        spill(index, at);
+    static Cells gather(const CellForce* cells, const std::int32_t* at) {
         const auto pair = [&](std::size_t low, std::size_t high) {
             const __m256 first = _mm256_load_ps(&cells[at[low]].radial);
             const __m256 second = _mm256_load_ps(&cells[at[high]].radial);
@@ -75,32 +97,25 @@ struct Avx512Lanes {
         return {front(0), front(1), front(2), front(3), back(0), back(1), back(2), back(3)};
     }
 
-    static void add_to_cells(CellCharge* cells, Int index, std::size_t count, Int inner, Int inner_next, Int outer,
-                             Int outer_next) {
-        alignas(64) std::uint32_t at[kWidth];
-        spill(index, at);
-        alignas(64) CellCharge corners[kWidth];
+    /// Writes the corners of each electron, 16 bytes, in the order of corner_place().
+    static void store_corners(CellCharge* to, Int inner, Int inner_next, Int outer, Int outer_next) {
         Real row[4];
         transpose(_mm512_castsi512_ps(inner), _mm512_castsi512_ps(inner_next), _mm512_castsi512_ps(outer),
                   _mm512_castsi512_ps(outer_next), row);
         // row[k] holds the corners of electrons k, k + 4, k + 8, k + 12.
         for (std::size_t k = 0; k < 4; ++k) {
-            _mm512_store_si512(&corners[4 * k], _mm512_castps_si512(row[k]));
+            _mm512_store_si512(to + 4 * k, _mm512_castps_si512(row[k]));
         }
-        for (std::size_t k = 0; k < count; ++k) {
-            auto* cell = reinterpret_cast<__m128i*>(&cells[at[k]]);
-            const auto* corner = reinterpret_cast<const __m128i*>(&corners[4 * (k % 4) + k / 4]);
-            _mm_store_si128(cell, _mm_add_epi32(_mm_load_si128(cell), _mm_load_si128(corner)));
-        }
+    }
+    static std::size_t corner_place(std::size_t k) { return 4 * (k % 4) + k / 4; }
+
+    static void add(CellCharge& cell, const CellCharge& corners) {
+        auto* sum = reinterpret_cast<__m128i*>(&cell);
+        const auto* more = reinterpret_cast<const __m128i*>(&corners);
+        _mm_store_si128(sum, _mm_add_epi32(_mm_load_si128(sum), _mm_load_si128(more)));
     }
 
 private:
-    static void spill(Int index, std::uint32_t* at) {
-        _mm512_store_si512(at, index);
-        // Through memory: GCC would take the lanes out one by one, at twice the instructions.
-        asm volatile("" : "+m"(*reinterpret_cast<std::uint32_t(*)[kWidth]>(at)));
-    }
-
     /// 4 x 4 in each 128-bit lane.
     static void transpose(Real a, Real b, Real c, Real d, Real* out) {
         const __m512d ab_low = _mm512_castps_pd(_mm512_unpacklo_ps(a, b));

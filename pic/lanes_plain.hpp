@@ -54,18 +54,24 @@ struct PlainLanes {
     /// A bit for each electron with r <= 0 or r >= end.
     static std::uint32_t outside(Int r, std::int32_t end) { return r <= 0 || r >= end ? 1 : 0; }
 
-    static Cells gather(const CellForce* cells, Int index) { return cells[index]; }
+    /// a - b in double precision, rounded once.
+    static Real difference(const double* a, const double* b) { return static_cast<Real>(*a - *b); }
+    static void store_cells(CellForce* to, const Cells& cells) { *to = cells; }
 
-    /// Adds the corners of the first `count` electrons.
-    static void add_to_cells(CellCharge* cells, Int index, std::size_t, Int inner, Int inner_next, Int outer,
-                             Int outer_next) {
-        CellCharge& cell = cells[index];
+    static Cells gather(const CellForce* cells, const std::int32_t* at) { return cells[*at]; }
+
+    static void store_corners(CellCharge* to, Int inner, Int inner_next, Int outer, Int outer_next) {
+        *to = {inner, inner_next, outer, outer_next};
+    }
+    static std::size_t corner_place(std::size_t) { return 0; }
+
+    static void add(CellCharge& cell, const CellCharge& corners) {
         // Unsigned: an overflow wraps, as in the vector lanes, and the scatter's total shows it.
         const auto sum = [](Int a, Int b) {
             return static_cast<Int>(static_cast<std::uint32_t>(a) + static_cast<std::uint32_t>(b));
         };
-        cell = {sum(cell.inner, inner), sum(cell.inner_next, inner_next), sum(cell.outer, outer),
-                sum(cell.outer_next, outer_next)};
+        cell = {sum(cell.inner, corners.inner), sum(cell.inner_next, corners.inner_next),
+                sum(cell.outer, corners.outer), sum(cell.outer_next, corners.outer_next)};
     }
 };
 

@@ -1,5 +1,5 @@
 // SPDX-License-Identifier: MIT
-// The work done on every electron, as plain functions over ranges of the store, once for each instruction set of the
+// The work done on every electron and every cell, as plain functions over ranges, once for each instruction set of the
 // processor. All do the same IEEE 754 single-precision operations in the same order (add, multiply, fused multiply-add,
 // divide, square root, rounding to integer: all correctly rounded), so their results are equal to the last bit.
 #pragma once
@@ -48,6 +48,17 @@ struct ParticlePlan {
     float angle_to_fixed;        // fixed-point theta in one radian, twice: the push has half the angle
 };
 
+/// Factors of one row of cells.
+struct RowForce {
+    float across;                // radial kick for 1 V from row to row
+    float inner_arc, outer_arc;  // azimuthal kick for 1 V from node to node on the inner and the outer row
+    float slope, bend;           // as in CellForce, the same all round
+    float turn, turn_rise;
+};
+
+/// Electrons in the widest vector.
+inline constexpr std::size_t kWidest = 16;
+
 struct ParticleKernel {
     /// One leapfrog step of the electrons [begin, end): u from n - 1/2 to n + 1/2, then r and theta from n to n + 1.
     /// Writes the indices, rising, of those that end at or beyond an electrode and keep the state they arrive with.
@@ -60,13 +71,19 @@ struct ParticleKernel {
                     CellCharge* cells);
 
     /// u^2 / (1 + gamma) of each electron at time n, u carried half an electric kick forward, which is where Boris's
-    /// scheme passes time n. [end - begin]; times m (velocity unit)^2 it is the kinetic energy.
+    /// scheme passes time n. Times m (velocity unit)^2 it is the kinetic energy. [end - begin], with room for
+    /// whole vectors of kWidest.
     void (*kinetic)(const ParticlePlan& plan, const CellForce* force, const ElectronView& electrons, std::size_t begin,
                     std::size_t end, float* energy);
 
-    /// Angular speed of each electron, rad a step, shared between the rows within and without it. [end - begin]
+    /// Angular speed of each electron, rad a step, shared between the rows within and without it. As `energy`.
     void (*turning)(const ParticlePlan& plan, const ElectronView& electrons, std::size_t begin, std::size_t end,
                     float* inner, float* outer);
+
+    /// The force in one row of `width` cells from the potential of its inner and outer nodes, V, [width] each.
+    /// Potentials are subtracted in double precision: they are thousands of volts, their differences single ones.
+    void (*tabulate)(const RowForce& row, const double* inner, const double* outer, std::size_t width,
+                     CellForce* cells);
 };
 
 /// Throws std::invalid_argument for a set that is not among instruction_sets().

@@ -1,6 +1,6 @@
 // SPDX-License-Identifier: MIT
 // One leapfrog step of every electron: gather, relativistic Boris rotation, move, on the threads of the run.
-// The step itself is in kernel_lanes.hpp.
+// The step itself is in push_loops.hpp.
 #pragma once
 
 #include <span>

@@ -9,6 +9,14 @@
 #include "pic/thread_share.hpp"
 
 namespace spokewright {
+namespace {
+
+/// Counters are added without sign, so that an overflow wraps and is found by the total.
+std::uint32_t bits(std::int32_t counter) {
+    return static_cast<std::uint32_t>(counter);
+}
+
+}  // namespace
 
 Scatter::Scatter(const StepUnits& units, double macro_charge, int threads, InstructionSet set)
     : units_(units),
@@ -33,10 +41,10 @@ void Scatter::deposit(const ElectronStore& store) {
         }
     }
     sum_nodes();
-    // A wrapped counter loses 2^32 and no other can gain it, so the total shows every overflow.
+    // A wrapped sum loses 2^32 and no other can gain it, so the total shows every overflow.
     if (total_ != static_cast<std::int64_t>(store.size()) * kChargeOne) {
         throw NumericsError(
-            fmt::format("a cell of the grid holds more than 8191 macro-electrons ({} in all); lower "
+            fmt::format("a node of the grid holds more than 8191 macro-electrons ({} in all); lower "
                         "electrons.target_count or raise grid.azimuthal_cells",
                         store.size()));
     }
@@ -48,25 +56,22 @@ void Scatter::sum_nodes() {
     for (const auto& cells : thread_cells_) {
         for (std::size_t i = 0; i < static_cast<std::size_t>(units_.grid.n_r); ++i) {
             const CellCharge* row = cells.data() + i * units_.cell_stride();
-            std::int64_t* inner = node_sum_.data() + i * width;
-            std::int64_t* outer = inner + width;
-            inner[0] += row[width - 1].inner_next;
-            outer[0] += row[width - 1].outer_next;
-            for (std::size_t j = 0; j + 1 < width; ++j) {
-                inner[j + 1] += row[j].inner_next;
-                outer[j + 1] += row[j].outer_next;
-            }
-            for (std::size_t j = 0; j < width; ++j) {
-                inner[j] += row[j].inner;
-                outer[j] += row[j].outer;
+            std::uint32_t* inner = node_sum_.data() + i * width;
+            std::uint32_t* outer = inner + width;
+            inner[0] += bits(row[0].inner) + bits(row[width - 1].inner_next);
+            outer[0] += bits(row[0].outer) + bits(row[width - 1].outer_next);
+            for (std::size_t j = 1; j < width; ++j) {
+                inner[j] += bits(row[j].inner) + bits(row[j - 1].inner_next);
+                outer[j] += bits(row[j].outer) + bits(row[j - 1].outer_next);
             }
         }
     }
     const double unit = macro_charge_ / kChargeOne;
     total_ = 0;
     for (std::size_t k = 0; k < node_sum_.size(); ++k) {
-        total_ += node_sum_[k];
-        node_charge_[k] = unit * static_cast<double>(node_sum_[k]);
+        const auto sum = static_cast<std::int32_t>(node_sum_[k]);
+        total_ += sum;
+        node_charge_[k] = unit * sum;
     }
 }
 

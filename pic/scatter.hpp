@@ -1,6 +1,6 @@
 // SPDX-License-Identifier: MIT
 // Charge of the electrons on the grid's nodes, by area weighting, summed as integers: exact, and the same in any order
-// and on any number of threads. The deposit itself is in kernel_lanes.hpp.
+// and on any number of threads. The deposit itself is in scatter_loops.hpp.
 #pragma once
 
 #include <span>
@@ -17,8 +17,8 @@ public:
     Scatter(const StepUnits& units, double macro_charge, int threads, InstructionSet set = fastest_instruction_set());
 
     /// Deposits every electron: azimuthal share linear in theta, radial share linear in r^2, so that a uniform density
-    /// deposits a uniform density; each share to 2^-18 macro-electron. Throws NumericsError when a cell held more
-    /// than its counters can (8191 electrons).
+    /// deposits a uniform density; each share to 2^-18 macro-electron. Throws NumericsError when a node holds more
+    /// than its counter can (8191 electrons).
     void deposit(const ElectronStore& store);
 
     /// C, [n_r + 1][n_theta].
@@ -35,7 +35,7 @@ private:
     double macro_charge_;
     int threads_;
     std::vector<AlignedVector<CellCharge>> thread_cells_;  // [threads][table_cells]
-    AlignedVector<std::int64_t> node_sum_;                 // [n_r + 1][n_theta]
+    AlignedVector<std::uint32_t> node_sum_;                // [n_r + 1][n_theta]
     AlignedVector<double> node_charge_;
     std::int64_t total_ = 0;
 };

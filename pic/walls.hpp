@@ -25,7 +25,8 @@ class Walls {
 public:
     Walls(const StepUnits& units, const Deck& deck);
 
-    /// Books the electrons named by `hits`; they stay in the store. Throws NumericsError for a momentum that is no number.
+    /// Books the electrons named by `hits`; they stay in the store. Throws NumericsError for a momentum that is no
+    /// number.
     void strike(const ElectronStore& store, std::span<const std::uint32_t> hits);
 
     // What the last call of strike() booked.

@@ -25,7 +25,7 @@ class Row:
 
 # (heading, [(key of summary.json, name, unit)])
 _GROUPS = (
-    ("Currents", (
+    ("Voltage and currents", (
         ("anode_voltage_V", "Anode voltage", "V"),
         ("anode_current_A", "Anode current", "A"),
         ("emitted_current_A", "Current emitted by the cathode, secondaries included", "A"),

@@ -1,39 +1,16 @@
 // SPDX-License-Identifier: MIT
 // The whole step of the heating tube on 48 x 160 cells, with emission, walls, circuit, and a sample every 16 steps.
 #include <cstdint>
-#include <map>
 #include <string>
 
-#include "diagnostics/mode_watch.hpp"
 #include "diagnostics/record.hpp"
-#include "inputs/deck_reader.hpp"
-#include "pic/interaction_space.hpp"
 #include "tests/bench/counters.hpp"
+#include "tests/bench/filled_tube.hpp"
 
 namespace spokewright {
 namespace {
 
-constexpr double kFilledAfter = 8e-9;         // s: voltage up, hub full
-constexpr std::int64_t kElectronSteps = 4e8;  // worth timing
-
-Deck heating_tube(int target) {
-    return read_deck(std::string(SPOKEWRIGHT_SOURCE_DIR) + "/inputs/tubes/heating.ini",
-                     {"electrons.target_count=" + std::to_string(target)});
-}
-
-/// The tube with its hub full, made once for each size of cloud.
-const SpaceState& filled_tube(int target) {
-    static std::map<int, SpaceState> made;
-    const auto found = made.find(target);
-    if (found != made.end()) {
-        return found->second;
-    }
-    InteractionSpace space(heating_tube(target), 2);
-    while (space.time() < kFilledAfter) {
-        space.step();
-    }
-    return made.emplace(target, space.save()).first->second;
-}
+constexpr std::int64_t kElectronSteps = 1e8;  // worth timing
 
 void whole_step(benchmark::State& state, int target, int threads) {
     const Deck deck = heating_tube(target);

@@ -120,10 +120,17 @@ TEST_CASE("every instruction set scatters the same charge") {
 
 TEST_CASE("every instruction set finds the same energies and angular speeds") {
     const ElectronStore store = edge_electrons(kCloud.units, 1001);
+    const std::size_t room = store.size() + kWidest;
     const auto found = [&](const ParticleKernel& kernel) {
-        AlignedVector<float> all(3 * store.size());
-        kernel.kinetic(kPlan, kCloud.force.cells(), store.view(), 0, store.size(), all.data());
-        kernel.turning(kPlan, store.view(), 0, store.size(), all.data() + store.size(), all.data() + 2 * store.size());
+        AlignedVector<float> all;
+        {
+            AlignedVector<float> energy(room), inner(room), outer(room);
+            kernel.kinetic(kPlan, kCloud.force.cells(), store.view(), 0, store.size(), energy.data());
+            kernel.turning(kPlan, store.view(), 0, store.size(), inner.data(), outer.data());
+            for (const auto& part : {energy, inner, outer}) {
+                all.insert(all.end(), part.begin(), part.begin() + static_cast<std::ptrdiff_t>(store.size()));
+            }
+        }
         return all;
     };
     const auto plain = found(particle_kernel(InstructionSet::plain));

@@ -123,6 +123,6 @@ TEST_CASE("8191 electrons at one node are counted, one more is caught") {
     }
     CHECK(
         message ==
-        "a cell of the grid holds more than 8191 macro-electrons (8192 in all); lower electrons.target_count or raise "
+        "a node of the grid holds more than 8191 macro-electrons (8192 in all); lower electrons.target_count or raise "
         "grid.azimuthal_cells");
 }
