@@ -6,6 +6,7 @@
 #include <algorithm>
 #include <cmath>
 
+#include "diagnostics/flat_top.hpp"
 #include "diagnostics/ledger.hpp"
 #include "diagnostics/theory.hpp"
 
@@ -23,31 +24,6 @@ constexpr double kImbalanceWarning = 0.01;
 // A mode that doubles its energy between neighbouring sixths and is above 1 % of the anode voltage is still starting.
 constexpr double kGrowth = 2;
 constexpr double kGrowthShare = 0.01;
-
-/// Rows [first, last) of the last stretch of constant, non-zero programme.
-struct FlatTop {
-    std::size_t first;
-    std::size_t last;
-};
-
-FlatTop flat_top(const Deck& deck, const std::vector<double>& time_ns) {
-    const auto row_at = [&](double time) {  // first row at or after `time`
-        const auto row = std::lower_bound(time_ns.begin(), time_ns.end(), time * 1e9 * (1 - 1e-12));
-        return static_cast<std::size_t>(row - time_ns.begin());
-    };
-    const auto& points = deck.supply.programme;
-    if (points.empty()) return {0, time_ns.size()};
-    if (points.back().share > 0) {
-        std::size_t start = points.size() - 1;
-        while (start > 0 && points[start - 1].share == points.back().share) --start;
-        return {row_at(start == 0 ? 0.0 : points[start].time), time_ns.size()};
-    }
-    for (std::size_t end = points.size() - 1; end > 0; --end) {
-        if (points[end].share == 0 || points[end].share != points[end - 1].share) continue;
-        return {row_at(points[end - 1].time), std::min(row_at(points[end].time), time_ns.size())};
-    }
-    return {time_ns.size(), time_ns.size()};
-}
 
 class Summariser {
 public:
@@ -228,6 +204,7 @@ std::string Summariser::judge_status() const {
         space_charge_limited_current_per_length(voltage, deck_.tube.cathode_radius, deck_.tube.anode_radius);
     if (hopeless && std::abs(s_.anode_current_A.mean) < kNoCurrentShare * free_current) return "cut off";
     if (deck_.circuit.modes.empty()) return settling_.settled ? "settled" : "not settled";
+    if (!facts_.early_end.empty()) return "no oscillation";  // the stop rule has looked closer
     const bool too_early = facts_.interrupted || growing_mode() != nullptr || too_short_for() != nullptr;
     return too_early ? "not settled" : "no oscillation";
 }
@@ -267,6 +244,7 @@ Summary Summariser::run(const WallBooks& books) {
     s_.version = facts_.version;
     s_.deck_sha256 = deck_.sha256;
     s_.seed = deck_.electrons.seed;
+    s_.early_end = facts_.early_end;
     s_.end_time_ns = time_ns_.empty() ? 0 : time_ns_.back();
     s_.hull_voltage_V = hull_voltage(mean_field(deck_), deck_.tube.cathode_radius, deck_.tube.anode_radius);
     s_.electrons = time_ns_.empty() ? 0 : record_.last("electrons");

@@ -28,6 +28,7 @@ struct RunFacts {
     double ns_per_electron_step = 0;
     double macro_weight = 0;            // real electrons in one macro-electron
     bool interrupted = false;           // stopped by a signal before the end time
+    std::string early_end;              // why the stop rule ended the run, empty if it did not
     std::vector<std::string> warnings;  // from the start checks and the run
 };
 
@@ -45,6 +46,7 @@ struct Summary {
     std::uint64_t seed = 0;
     std::string status;  // "settled", "not settled", "no oscillation", "cut off"
     double settled_from_ns = kUndefined, end_time_ns = 0;
+    std::string early_end;  // why the run ended before the deck's end time, empty if it did not
     MeanWithError anode_voltage_V, anode_current_A, emitted_current_A, cathode_return_current_A;
     MeanWithError input_power_W, rf_power_W, load_power_W, wall_loss_W, anode_heat_W, cathode_heat_W;
     MeanWithError electronic_efficiency, total_efficiency;  // rf / input, load / input

@@ -181,6 +181,7 @@ Json summary_json(const Summary& s) {
             {"averaged_from_ns", number(s.averaged_from_ns)},
             {"averaged_to_ns", number(s.averaged_to_ns)},
             {"end_time_ns", number(s.end_time_ns)},
+            {"early_end", s.early_end.empty() ? Json(nullptr) : Json(s.early_end)},
             {"anode_voltage_V", mean_json(s.anode_voltage_V)},
             {"anode_current_A", mean_json(s.anode_current_A)},
             {"emitted_current_A", mean_json(s.emitted_current_A)},
@@ -223,6 +224,7 @@ std::vector<std::string> summary_lines(const Summary& s) {
         lines.push_back(shortened(fmt::format("{:<13}{}", heading, text)));
     };
     add("status", status_text(s));
+    if (!s.early_end.empty()) append_wrapped(lines, "ended early", s.early_end);
     add("current", fmt::format("{} at {}", quantity(s.anode_current_A, "A"), quantity(s.anode_voltage_V.mean, "V")));
     add("input", quantity(s.input_power_W, "W"));
     add("power", fmt::format("{} from the electrons: {} to the load, {} to the walls", quantity(s.rf_power_W, "W"),

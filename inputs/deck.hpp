@@ -91,9 +91,10 @@ struct GridSettings {
 };
 
 struct ClockSettings {
-    double step = 0;        // s (resolved: see deck_rules.hpp)
-    double end_time = 0;    // s
-    int sample_every = 16;  // steps
+    double step = 0;             // s (resolved: see deck_rules.hpp)
+    double end_time = 0;         // s
+    int sample_every = 16;       // steps
+    double stop_half_width = 0;  // share of the mean: 0 runs to the end time
 };
 
 struct ElectronSettings {

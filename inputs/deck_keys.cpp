@@ -15,6 +15,7 @@ constexpr Unit kVolt{"V", 1};
 constexpr Unit kNanosecond{"ns", 1e-9};
 constexpr Unit kPicosecond{"ps", 1e-12};
 constexpr Unit kMinute{"min", 60};
+constexpr Unit kPercent{"%", 0.01};
 constexpr Unit kOhm{"ohm", 1};
 constexpr Unit kPicofarad{"pF", 1e-12};
 constexpr Unit kAmpere{"A", 1};
@@ -250,6 +251,11 @@ std::vector<DeckKey> run_keys() {
          "Tube time at which the run ends.", ""},
         {"clock", "sample_every", whole(&Deck::clock, &ClockSettings::sample_every, 1, 1000000), preset("16"),
          "Steps between two samples of the series.", ""},
+        {"clock", "stop_half_width_percent",
+         real(&Deck::clock, &ClockSettings::stop_half_width, kPercent, between(0, 5)), preset("0"),
+         "End early once settled with current and power known to this half-width, or once a mode skip is certain; 0 "
+         "runs to the end time.",
+         ""},
         {"electrons", "target_count",
          whole<ElectronSettings, std::int64_t>(&Deck::electrons, &ElectronSettings::target_count, 100, 50'000'000),
          preset("20000"), "Macro-electrons in the hub at full voltage.", ""},

@@ -20,7 +20,7 @@ std::vector<std::string> fixed_lines(const std::string& resolved_text) {
         if (!line.empty() && line.front() == '[') {
             section = line;
         }
-        if (section != "[output]" && !line.starts_with("end_time_ns")) {
+        if (section != "[output]" && !line.starts_with("end_time_ns") && !line.starts_with("stop_half_width")) {
             lines.push_back(line);
         }
     }
@@ -35,8 +35,8 @@ void require_same_deck(const std::string& path, const std::string& stored, const
         const std::string new_line = k < now.size() ? now[k] : "";
         if (old_line != new_line) {
             throw InputError(fmt::format(
-                "{}: was made from another deck: '{}' there, '{}' now; --resume allows a new clock.end_time_ns and new "
-                "[output] keys only",
+                "{}: was made from another deck: '{}' there, '{}' now; --resume allows a new clock.end_time_ns, "
+                "clock.stop_half_width_percent and [output] section",
                 path, old_line, new_line));
         }
     }

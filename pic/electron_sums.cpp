@@ -8,17 +8,21 @@
 namespace spokewright {
 
 double ElectronSums::kinetic_energy_eV(const ElectronStore& store, const ForceTable& force) const {
-    Block energy;
-    std::array<double, 8> sums{};  // eight chains of additions run side by side
-    for (std::size_t begin = 0; begin < store.size(); begin += kBlock) {
-        const std::size_t end = std::min(begin + kBlock, store.size());
+    const std::size_t blocks = (store.size() + kBlock - 1) / kBlock;
+    std::vector<double> sums(blocks);
+#pragma omp parallel for num_threads(threads_) schedule(static)
+    for (std::size_t block = 0; block < blocks; ++block) {
+        Block energy;
+        const std::size_t begin = block * kBlock, end = std::min(begin + kBlock, store.size());
         kernel_.kinetic(plan_, force.cells(), store.view(), begin, end, energy.data());
         std::fill(energy.begin() + static_cast<std::ptrdiff_t>(end - begin), energy.end(), 0.0f);
-        for (std::size_t k = 0; k < kBlock; k += sums.size()) {
-            for (std::size_t chain = 0; chain < sums.size(); ++chain) {
-                sums[chain] += static_cast<double>(energy[k + chain]);
+        std::array<double, 8> chains{};  // eight chains of additions run side by side
+        for (std::size_t k = 0; k < kBlock; k += chains.size()) {
+            for (std::size_t chain = 0; chain < chains.size(); ++chain) {
+                chains[chain] += static_cast<double>(energy[k + chain]);
             }
         }
+        sums[block] = std::accumulate(chains.begin(), chains.end(), 0.0);
     }
     return units_.energy_unit_eV() * std::accumulate(sums.begin(), sums.end(), 0.0);
 }

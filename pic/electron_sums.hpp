@@ -1,6 +1,6 @@
 // SPDX-License-Identifier: MIT
-// Sums over the electrons that a sample or the self field wants, in blocks of fixed size and in the store's order: the
-// same to the last bit for any instruction set.
+// Sums over the electrons that a sample or the self field wants, in blocks of fixed size that are added in the store's
+// order: the same to the last bit for any number of threads and any instruction set.
 #pragma once
 
 #include <array>
@@ -14,8 +14,8 @@ namespace spokewright {
 
 class ElectronSums {
 public:
-    ElectronSums(const StepUnits& units, InstructionSet set)
-        : units_(units), plan_(units.plan()), kernel_(particle_kernel(set)) {}
+    ElectronSums(const StepUnits& units, int threads = 1, InstructionSet set = fastest_instruction_set())
+        : units_(units), plan_(units.plan()), kernel_(particle_kernel(set)), threads_(threads) {}
 
     /// Kinetic energy at time n of all electrons, eV a macro-electron: u is carried half an electric kick forward,
     /// which is where Boris's scheme passes time n.
@@ -32,6 +32,7 @@ private:
     StepUnits units_;
     ParticlePlan plan_;
     const ParticleKernel& kernel_;
+    int threads_;
 };
 
 }  // namespace spokewright

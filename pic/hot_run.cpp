@@ -9,10 +9,12 @@
 #include <chrono>
 #include <cmath>
 #include <filesystem>
+#include <optional>
 
 #include "diagnostics/archive.hpp"
 #include "diagnostics/mode_watch.hpp"
 #include "diagnostics/start_checks.hpp"
+#include "diagnostics/stop_rule.hpp"
 #include "diagnostics/summary_text.hpp"
 #include "diagnostics/whole_file.hpp"
 #include "inputs/errors.hpp"
@@ -66,7 +68,12 @@ void prepare_folder(const RunOptions& options, const Files& files) {
 class Leg {
 public:
     Leg(const Deck& deck, const RunOptions& options)
-        : deck_(deck), space_(deck, options.threads), record_(deck), watch_(deck), started_(seconds()) {}
+        : deck_(deck),
+          space_(deck, options.threads),
+          record_(deck),
+          watch_(deck),
+          stop_rule_(deck),
+          started_(seconds()) {}
 
     void resume(const Checkpoint& checkpoint) {
         space_.restore(checkpoint.space);
@@ -82,7 +89,7 @@ public:
     void run(Progress& progress, const Keep& keep) {
         const auto last = static_cast<std::int64_t>(std::ceil(deck_.clock.end_time / deck_.clock.step - 1e-9));
         double kept_at = seconds();
-        while (step_ < last && stop_signal() == 0) {
+        while (step_ < last && stop_signal() == 0 && !early_end_) {
             record_.add(space_.step());
             ++step_;
             if (step_ % deck_.clock.sample_every == 0 || step_ == last) {
@@ -118,6 +125,7 @@ public:
         facts.ns_per_electron_step = electron_steps > 0 ? wall_clock() * 1e9 / electron_steps : kUndefined;
         facts.macro_weight = space_.macro_weight();
         facts.interrupted = stop_signal() != 0;
+        facts.early_end = early_end_.value_or("");
         facts.warnings = warnings;
         return facts;
     }
@@ -146,6 +154,7 @@ private:
             energies_.push_back(mode.energy);
         }
         watch_.observe(view.time * 1e9, voltages_, energies_);
+        early_end_ = stop_rule_.look(record_);
         progress.update(progress_state());
     }
 
@@ -178,6 +187,8 @@ private:
     InteractionSpace space_;
     Record record_;
     ModeWatch watch_;
+    StopRule stop_rule_;
+    std::optional<std::string> early_end_;
     std::vector<Snapshot> snapshots_;
     Snapshot final_snapshot_;
     std::vector<double> voltages_, energies_;

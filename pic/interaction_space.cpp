@@ -33,7 +33,7 @@ InteractionSpace::InteractionSpace(const Deck& deck, int threads, InstructionSet
       force_(units_, threads, set),
       push_(units_, threads, set),
       scatter_(units_, macro_charge_, threads, set),
-      sums_(units_, set),
+      sums_(units_, threads, set),
       walls_(units_, deck),
       cathode_(deck, units_, macro_charge_),
       wall_(static_cast<std::size_t>(poisson_.harmonics())),

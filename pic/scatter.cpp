@@ -29,6 +29,7 @@ Scatter::Scatter(const StepUnits& units, double macro_charge, int threads, Instr
       node_charge_(units.grid.nodes()) {}
 
 void Scatter::deposit(const ElectronStore& store) {
+    std::int64_t total = 0;
 #pragma omp parallel num_threads(threads_)
     {
         const ThreadShare share = thread_share(store.size());
@@ -39,8 +40,12 @@ void Scatter::deposit(const ElectronStore& store) {
         for (auto idle = static_cast<std::size_t>(omp_get_num_threads()); idle < thread_cells_.size(); ++idle) {
             std::fill(thread_cells_[idle].begin(), thread_cells_[idle].end(), CellCharge{});
         }
+#pragma omp for schedule(static) reduction(+ : total)
+        for (int i = 0; i <= units_.grid.n_r; ++i) {
+            total += sum_row(static_cast<std::size_t>(i));
+        }
     }
-    sum_nodes();
+    total_ = total;
     // A wrapped sum loses 2^32 and no other can gain it, so the total shows every overflow.
     if (total_ != static_cast<std::int64_t>(store.size()) * kChargeOne) {
         throw NumericsError(
@@ -50,29 +55,34 @@ void Scatter::deposit(const ElectronStore& store) {
     }
 }
 
-void Scatter::sum_nodes() {
+std::int64_t Scatter::sum_row(std::size_t i) {
     const auto width = static_cast<std::size_t>(units_.grid.n_theta);
-    std::fill(node_sum_.begin(), node_sum_.end(), 0);
+    std::uint32_t* sum = node_sum_.data() + i * width;
+    std::fill(sum, sum + width, 0U);
     for (const auto& cells : thread_cells_) {
-        for (std::size_t i = 0; i < static_cast<std::size_t>(units_.grid.n_r); ++i) {
+        if (i < static_cast<std::size_t>(units_.grid.n_r)) {
             const CellCharge* row = cells.data() + i * units_.cell_stride();
-            std::uint32_t* inner = node_sum_.data() + i * width;
-            std::uint32_t* outer = inner + width;
-            inner[0] += bits(row[0].inner) + bits(row[width - 1].inner_next);
-            outer[0] += bits(row[0].outer) + bits(row[width - 1].outer_next);
+            sum[0] += bits(row[0].inner) + bits(row[width - 1].inner_next);
             for (std::size_t j = 1; j < width; ++j) {
-                inner[j] += bits(row[j].inner) + bits(row[j - 1].inner_next);
-                outer[j] += bits(row[j].outer) + bits(row[j - 1].outer_next);
+                sum[j] += bits(row[j].inner) + bits(row[j - 1].inner_next);
+            }
+        }
+        if (i > 0) {
+            const CellCharge* row = cells.data() + (i - 1) * units_.cell_stride();
+            sum[0] += bits(row[0].outer) + bits(row[width - 1].outer_next);
+            for (std::size_t j = 1; j < width; ++j) {
+                sum[j] += bits(row[j].outer) + bits(row[j - 1].outer_next);
             }
         }
     }
     const double unit = macro_charge_ / kChargeOne;
-    total_ = 0;
-    for (std::size_t k = 0; k < node_sum_.size(); ++k) {
-        const auto sum = static_cast<std::int32_t>(node_sum_[k]);
-        total_ += sum;
-        node_charge_[k] = unit * sum;
+    std::int64_t total = 0;
+    for (std::size_t j = 0; j < width; ++j) {
+        const auto counted = static_cast<std::int32_t>(sum[j]);
+        total += counted;
+        node_charge_[i * width + j] = unit * counted;
     }
+    return total;
 }
 
 }  // namespace spokewright

@@ -27,7 +27,8 @@ public:
     std::int64_t scattered_electrons() const { return total_ / kChargeOne; }
 
 private:
-    void sum_nodes();
+    /// Charge of the nodes of row i from all threads' cells. Returns its counters' total.
+    std::int64_t sum_row(std::size_t i);
 
     StepUnits units_;
     ParticlePlan plan_;

@@ -15,7 +15,7 @@ MOST_SNAPSHOTS = 4  # one large picture and a row of three
 RUN_AGAIN = "run spokewright again with --replace"
 
 _NEEDED_IN_SUMMARY = (
-    "program version deck_sha256 seed status settled_from_ns averaged_from_ns averaged_to_ns end_time_ns "
+    "program version deck_sha256 seed status settled_from_ns averaged_from_ns averaged_to_ns end_time_ns early_end "
     "anode_voltage_V anode_current_A emitted_current_A cathode_return_current_A input_power_W rf_power_W load_power_W wall_loss_W anode_heat_W "
     "cathode_heat_W electronic_efficiency total_efficiency dominant_mode spoke_count spoke_strength hub_radius_mm "
     "frequency_GHz frequency_shift_MHz modes mode_events energy_imbalance charge_imbalance_C hull_voltage_V "
@@ -89,6 +89,8 @@ class Run:
 
     @property
     def interrupted(self):
+        if self.summary["early_end"] is not None:
+            return False
         last_step = 2e-3 * self.number("clock", "step_ps", 0)
         return self.summary["end_time_ns"] + last_step < self.number("clock", "end_time_ns", 0)
 

@@ -183,6 +183,9 @@ def status_words(run):
     if run.interrupted:
         words.append(f"The run was stopped at {s['end_time_ns']:.2f} of {run.number('clock', 'end_time_ns'):g} ns; "
                      "--resume goes on from there.")
+    if s["early_end"] is not None:
+        words.append(f"The run ended itself at {s['end_time_ns']:.1f} of {run.number('clock', 'end_time_ns'):g} ns: "
+                     f"{s['early_end']}.")
     part = run.averaged_part()
     if part:
         words.append(f"The means are taken from {part[0]:.1f} to {part[1]:.1f} ns.")

@@ -1,6 +1,7 @@
 // SPDX-License-Identifier: MIT
 // The parts of the heating tube's step one by one, at 50 000 electrons on 48 x 160 cells: what push, walls, emission,
-// scatter, field, self field and sample cost in the tube as it runs. The self field falls due every 32 steps, a sample every 16.
+// scatter, field, self field and sample cost in the tube as it runs. The self field falls due every 32 steps, a sample
+// every 16.
 #include <benchmark/benchmark.h>
 
 #include <string>
@@ -90,7 +91,7 @@ const bool kRegistered = [] {
     add("field and force", [](benchmark::State&, Pieces& pieces) { pieces.field(); });
     add("self field, due every 32 steps", [](benchmark::State&, Pieces& pieces) {
         std::vector<double> rows(pieces.magnetic.size());
-        ElectronSums(pieces.units, fastest_instruction_set()).add_angular_speed(pieces.store, rows);
+        ElectronSums(pieces.units).add_angular_speed(pieces.store, rows);
         benchmark::DoNotOptimize(rows.data());
     });
     add("sample, due every 16 steps", [](benchmark::State&, Pieces& pieces) {

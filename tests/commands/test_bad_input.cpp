@@ -274,7 +274,7 @@ TEST_CASE("nothing to resume, another deck, a damaged state") {
     CHECK(refusal(run_of(deck, out, {"--set", "magnet.field_T=0.17", "--resume"}), folder) ==
           Refusal{2,
                   "out/state.h5: was made from another deck: 'field_T = 0.175' there, 'field_T = 0.17' now; --resume "
-                  "allows a new clock.end_time_ns and new [output] keys only\n"});
+                  "allows a new clock.end_time_ns, clock.stop_half_width_percent and [output] section\n"});
 
     std::ifstream file(folder.file("out/state.h5"), std::ios::binary);
     const std::string good{std::istreambuf_iterator<char>(file), {}};

@@ -98,7 +98,7 @@ std::string replaced(std::string text, const std::string& old_part, const std::s
 
 std::string another(const std::string& there, const std::string& now) {
     return "input: state.h5: was made from another deck: '" + there + "' there, '" + now +
-           "' now; --resume allows a new clock.end_time_ns and new [output] keys only";
+           "' now; --resume allows a new clock.end_time_ns, clock.stop_half_width_percent and [output] section";
 }
 
 }  // namespace

@@ -10,7 +10,7 @@ using namespace spokewright;
 
 TEST_CASE("kinetic energy is that of the momentum half an electric kick later") {
     DriftingCloud cloud(48, 160, 2500);
-    const ElectronSums sums(cloud.units, fastest_instruction_set());
+    const ElectronSums sums(cloud.units);
     const double found = sums.kinetic_energy_eV(cloud.store, cloud.force);
     const double expected = [&] {
         double sum = 0;
@@ -36,7 +36,7 @@ TEST_CASE("kinetic energy is that of the momentum half an electric kick later") 
 
 TEST_CASE("angular speed is shared between rows like the charge") {
     const StepUnits units{{2e-3, 4e-3, 10e-3, 10, 24}, 1e-12};  // r_c is 10 cells
-    const ElectronSums sums(units, fastest_instruction_set());
+    const ElectronSums sums(units);
     ElectronStore store;
     store.append({5 * kRadialOne / 2, 7 * kAzimuthalOne, 0.5f, 0.25f});  // 2.5 cells out: rows 2 and 3
     std::vector<double> rows(11, 0.0);
@@ -50,21 +50,22 @@ TEST_CASE("angular speed is shared between rows like the charge") {
     CHECK(rows[4] == 0);
 }
 
-TEST_CASE("sums are the same to the last bit on every instruction set") {
+TEST_CASE("sums are the same to the last bit on every instruction set and number of threads") {
     const DriftingCloud cloud(48, 160, 2501);
-    const auto totals = [&](InstructionSet set) {
-        const ElectronSums sums(cloud.units, set);
+    const auto totals = [&](int threads, InstructionSet set) {
+        const ElectronSums sums(cloud.units, threads, set);
         std::vector<double> rows(49, 0.0);
         sums.add_angular_speed(cloud.store, rows);
         rows.push_back(sums.kinetic_energy_eV(cloud.store, cloud.force));
         return rows;
     };
     for (const InstructionSet set : instruction_sets()) {
-        CHECK(totals(set) == totals(InstructionSet::plain));
+        CHECK(totals(1, set) == totals(1, InstructionSet::plain));
     }
+    CHECK(totals(3, fastest_instruction_set()) == totals(1, fastest_instruction_set()));
 }
 
 TEST_CASE("no electrons, no energy") {
     const DriftingCloud cloud(48, 160, 0);
-    CHECK(ElectronSums(cloud.units, fastest_instruction_set()).kinetic_energy_eV(cloud.store, cloud.force) == 0);
+    CHECK(ElectronSums(cloud.units).kinetic_energy_eV(cloud.store, cloud.force) == 0);
 }

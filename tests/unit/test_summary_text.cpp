@@ -106,6 +106,7 @@ TEST_CASE("summary.json has its keys in order, means with half-widths, null for 
                                                "averaged_from_ns",
                                                "averaged_to_ns",
                                                "end_time_ns",
+                                               "early_end",
                                                "anode_voltage_V",
                                                "anode_current_A",
                                                "emitted_current_A",
