@@ -243,7 +243,7 @@ std::vector<DeckKey> run_keys() {
         {"grid", "azimuthal_cells", text_of("", "8..504, a multiple of vane_count", read_azimuthal_cells),
          computed("16 a vane, 64 in a smooth bore", azimuthal_cells_text), "Cells around the tube.", ""},
         {"clock", "step_ps", real(&Deck::clock, &ClockSettings::step, kPicosecond, above(0, 1000)),
-         computed("the least of 0.1/omega_c, 1/120 of the shortest mode period, 2 radial cells at full speed",
+         computed("the least of 0.1/omega_c, 1/60 of the shortest mode period, 2 radial cells at full speed",
                   step_text),
          "Time step.", ""},
         {"clock", "end_time_ns",

@@ -165,7 +165,7 @@ std::string step_text(const Deck& deck) {
     const double transit = (deck.tube.anode_radius - deck.tube.cathode_radius) / fastest;
     double step = 2 * transit / deck.grid.radial_cells;  // or an electron would leap over cells unfelt
     if (cyclotron_frequency > 0) step = std::min(step, 0.1 / cyclotron_frequency);
-    for (const ModeEntry& mode : deck.circuit.modes) step = std::min(step, 1 / (120 * mode.frequency));
+    for (const ModeEntry& mode : deck.circuit.modes) step = std::min(step, 1 / (60 * mode.frequency));
     // A diode without field has nothing slower than the transit to follow.
     if (cyclotron_frequency == 0 && deck.circuit.modes.empty()) step = std::min(step, transit / 100);
     return fmt::format("{:.4g}", four_figures_down(step * 1e12));

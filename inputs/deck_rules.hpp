@@ -38,8 +38,10 @@ void read_radial_cells(Deck& deck, std::string_view text);
 void read_azimuthal_cells(Deck& deck, std::string_view text);
 std::string azimuthal_cells_text(const Deck& deck);
 
-/// In ps, rounded down to four figures: the smaller of 0.1/omega_c and 1/120 of the shortest mode period; without
-/// field and circuit 1/100 of the time that an electron of full energy takes across the gap.
+/// In ps, rounded down to four figures: the least of 0.1/omega_c, 1/60 of the shortest mode period and the time in
+/// which an electron of full energy crosses 2 radial cells; without field and circuit 1/100 of its time across the gap.
+/// On the knee of the example tubes: against a third of it, current and power differ by under 0.3 %, cathode heat by
+/// under 2 % (README, "What a run depends on").
 std::string step_text(const Deck& deck);
 
 /// An end time that is within reach of the step.

@@ -15,6 +15,16 @@ std::int64_t round_at_random(double expected, float uniform) {
     return static_cast<std::int64_t>(std::floor(expected + static_cast<double>(uniform)));
 }
 
+/// sqrt(kT / m) in velocity units.
+double thermal_speed(double temperature_eV, const StepUnits& units) {
+    return std::sqrt(temperature_eV * kElementaryCharge / kElectronMass) / units.speed();
+}
+
+/// Cathode surface that belongs to one node, m^2.
+double node_area(const PolarGrid& grid) {
+    return grid.cathode_radius * grid.dtheta() * grid.axial_height;
+}
+
 }  // namespace
 
 Cathode::Cathode(const Deck& deck, const StepUnits& units, double macro_charge)
@@ -22,6 +32,13 @@ Cathode::Cathode(const Deck& deck, const StepUnits& units, double macro_charge)
       units_(units),
       random_(deck.electrons.seed),
       macro_charge_(macro_charge),
+      energy_of_(units.energy_scale()),
+      primary_speed_(thermal_speed(deck.cathode.launch_temperature, units)),
+      secondary_speed_(thermal_speed(deck.cathode.secondary_temperature, units)),
+      field_to_kick_(units.half_kick(1)),
+      field_to_count_(kVacuumPermittivity * node_area(units.grid) / macro_charge),
+      density_to_count_(node_area(units.grid) * units.dt / std::abs(macro_charge)),
+      inverse_arc_(1 / (units.cathode_cells() * units.grid.dtheta())),
       secondaries_at_node_(static_cast<std::size_t>(units.grid.n_theta)) {}
 
 void Cathode::emit(std::int64_t step, const SurfaceField& surface, double magnetic,
@@ -33,12 +50,9 @@ void Cathode::emit(std::int64_t step, const SurfaceField& surface, double magnet
     if (settings_.secondary_emission) {
         emit_secondaries(step, surface, impacts, store);
     }
-    const PolarGrid& grid = units_.grid;
-    const double field_to_count =
-        kVacuumPermittivity * grid.axial_height * grid.cathode_radius * grid.dtheta() / macro_charge_;
     for (std::size_t j = 0; j < surface.on_surface().size(); ++j) {
         const double field = surface.on_surface()[j];
-        const double wanted = std::min(field_to_count * field - secondaries_at_node_[j], allowance(-field));
+        const double wanted = std::min(field_to_count_ * field - secondaries_at_node_[j], allowance(-field));
         if (wanted <= 0) {
             continue;
         }
@@ -46,12 +60,11 @@ void Cathode::emit(std::int64_t step, const SurfaceField& surface, double magnet
         const std::int64_t count = round_at_random(wanted, random_.uniform(step, Draw::emission_count, place, 0)[0]);
         for (std::int64_t k = 0; k < count; ++k) {
             const auto index = static_cast<std::uint32_t>(k);
-            const auto where = random_.uniform(step, Draw::emission_state, place, index);
-            const auto speed = random_.uniform(step, Draw::emission_velocity, place, index);
+            const Uniforms random = random_.uniform(step, Draw::emission, place, index);
             // Anywhere in the sector of half a cell on either side of the node.
-            const double cells = static_cast<double>(j) + static_cast<double>(where[0]) - 0.5;
-            launch(static_cast<std::int32_t>(std::lrint(cells * kAzimuthalOne)), j, settings_.launch_temperature,
-                   static_cast<double>(where[1]), speed, surface, store);
+            const double cells = static_cast<double>(j) + static_cast<double>(random[4]) - 0.5;
+            launch(static_cast<std::int32_t>(std::lrint(cells * kAzimuthalOne)), j, primary_speed_, random, surface,
+                   store);
         }
         primaries_ += count;
     }
@@ -71,9 +84,8 @@ void Cathode::emit_secondaries(std::int64_t step, const SurfaceField& surface, s
                           secondaries_at_node_.size();
         for (std::int64_t k = 0; k < count; ++k) {
             const auto index = static_cast<std::uint32_t>(k);
-            const auto instant = random_.uniform(step, Draw::secondary_state, place, index)[0];
-            launch(impact.theta, node, settings_.secondary_temperature, static_cast<double>(instant),
-                   random_.uniform(step, Draw::secondary_velocity, place, index), surface, store);
+            launch(impact.theta, node, secondary_speed_, random_.uniform(step, Draw::secondary, place, index), surface,
+                   store);
         }
         secondaries_at_node_[node] += static_cast<double>(count);
         secondaries_ += count;
@@ -89,22 +101,22 @@ double Cathode::allowance(double pulling_field) const {
     if (settings_.emission_limit > 0) {
         density = std::min(density, settings_.emission_limit);
     }
-    const PolarGrid& grid = units_.grid;
-    const double area = grid.cathode_radius * grid.dtheta() * grid.axial_height;
-    return density * area * units_.dt / std::abs(macro_charge_);
+    return density * density_to_count_;
 }
 
-void Cathode::launch(std::int32_t theta, std::size_t node, double temperature_eV, double instant,
-                     const std::array<float, 4>& random, const SurfaceField& surface, ElectronStore& store) {
-    const double thermal = std::sqrt(temperature_eV * kElementaryCharge / kElectronMass) / units_.speed();
-    const double normal = thermal * std::sqrt(-2 * std::log(static_cast<double>(random[0])));
-    const double tangential = thermal * std::sqrt(-2 * std::log(static_cast<double>(random[1]))) *
-                              std::cos(2 * kPi * static_cast<double>(random[2]));
-    energy_eV_ += units_.energy_eV(normal * normal + tangential * tangential);
+void Cathode::launch(std::int32_t theta, std::size_t node, double thermal, const Uniforms& random,
+                     const SurfaceField& surface, ElectronStore& store) {
+    // Single precision for the draws: they have 23 bits.
+    const float circle = static_cast<float>(2 * kPi);
+    const double normal = thermal * static_cast<double>(std::sqrt(-2 * std::log(random[0])));
+    const double tangential =
+        thermal * static_cast<double>(std::sqrt(-2 * std::log(random[1])) * std::cos(circle * random[2]));
+    energy_eV_ += energy_of_(normal * normal + tangential * tangential);
 
-    const double flown = 1 - instant;    // share of the step after the launch: where r stands at n + 1
-    const double carried = flown - 0.5;  // and from the launch to n + 1/2, where u stands
-    const double kick = units_.half_kick(surface.surface_share() * surface.first_cell()[node]);
+    const double flown =
+        1 - static_cast<double>(random[3]);  // share of the step after the launch: where r stands at n + 1
+    const double carried = flown - 0.5;      // and from the launch to n + 1/2, where u stands
+    const double kick = field_to_kick_ * surface.surface_share() * surface.first_cell()[node];
     const double rise_to_u = normal * carried + kick * carried * carried;
     const double rise = normal * flown + kick * flown * flown;
 
@@ -113,7 +125,7 @@ void Cathode::launch(std::int32_t theta, std::size_t node, double temperature_eV
     // du_theta/dt = -(q B / m) dr/dt: the canonical angular momentum stays that of the surface.
     electron.u_theta = static_cast<float>(tangential - turn_ * rise_to_u);
     electron.r = std::max<std::int32_t>(1, static_cast<std::int32_t>(std::lrint(rise * kRadialOne)));
-    const double drift = tangential * flown / (units_.cathode_cells() * units_.grid.dtheta());
+    const double drift = tangential * flown * inverse_arc_;
     std::int32_t place = theta + static_cast<std::int32_t>(std::lrint(drift * kAzimuthalOne));
     place += place < 0 ? units_.azimuthal_end() : 0;
     place -= place >= units_.azimuthal_end() ? units_.azimuthal_end() : 0;

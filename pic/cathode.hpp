@@ -37,14 +37,21 @@ private:
                           ElectronStore& store);
     /// Macro-electrons that heat and the deck's limit allow at one node in one step.
     double allowance(double pulling_field) const;
-    /// `theta`: fixed point, may lie outside one turn. `random`: instant, normal speed, tangential speed (two).
-    void launch(std::int32_t theta, std::size_t node, double temperature_eV, double instant,
-                const std::array<float, 4>& random, const SurfaceField& surface, ElectronStore& store);
+    /// `theta`: fixed point, may lie outside one turn. `thermal`: sqrt(kT / m), velocity units. `random`: normal speed,
+    /// tangential speed (two), instant within the step.
+    void launch(std::int32_t theta, std::size_t node, double thermal, const Uniforms& random,
+                const SurfaceField& surface, ElectronStore& store);
 
     CathodeSettings settings_;
     StepUnits units_;
     CounterRandom random_;
-    double macro_charge_;                      // C, negative
+    double macro_charge_;  // C, negative
+    EnergyScale energy_of_;
+    double primary_speed_, secondary_speed_;   // sqrt(kT / m), velocity units
+    double field_to_kick_;                     // half kick in velocity units for 1 V/m
+    double field_to_count_;                    // macro-electrons that bring 1 V/m at one node to zero, negative
+    double density_to_count_;                  // macro-electrons of 1 A/m^2 from one node in a step
+    double inverse_arc_;                       // azimuthal cells in one radial cell's length on the cathode
     double turn_ = 0;                          // gyration angle of the step at the cathode, rad
     std::vector<double> secondaries_at_node_;  // [n_theta], of the last call
     std::int64_t primaries_ = 0;

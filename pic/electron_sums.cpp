@@ -24,7 +24,7 @@ double ElectronSums::kinetic_energy_eV(const ElectronStore& store, const ForceTa
         }
         sums[block] = std::accumulate(chains.begin(), chains.end(), 0.0);
     }
-    return units_.energy_unit_eV() * std::accumulate(sums.begin(), sums.end(), 0.0);
+    return units_.energy_scale().unit_eV * std::accumulate(sums.begin(), sums.end(), 0.0);
 }
 
 void ElectronSums::add_angular_speed(const ElectronStore& store, std::span<double> rows) const {

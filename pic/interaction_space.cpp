@@ -8,8 +8,6 @@
 namespace spokewright {
 namespace {
 
-constexpr int kSelfFieldEvery = 32;  // steps, a few gyrations: the axisymmetric current changes over many
-
 PolarGrid grid_of(const Deck& deck) {
     return {deck.tube.cathode_radius, deck.tube.anode_radius, deck.tube.axial_height, deck.grid.radial_cells,
             deck.grid.azimuthal_cells};

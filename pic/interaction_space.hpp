@@ -21,6 +21,9 @@
 
 namespace spokewright {
 
+/// Steps between two updates of the self field, under a gyration: the axisymmetric current changes over many.
+inline constexpr int kSelfFieldEvery = 32;
+
 /// All that a step reads and changes beyond what follows from it; save and restore go through it.
 struct SpaceState {
     std::int64_t step = 0;

@@ -14,6 +14,17 @@
 
 namespace spokewright {
 
+/// Kinetic energy of a momentum in velocity units.
+struct EnergyScale {
+    double unit_eV;     // of u^2 / (1 + gamma) = 1
+    double inverse_c2;  // 1 / c^2
+
+    /// eV, of a squared gamma v.
+    double operator()(double u_squared) const {
+        return unit_eV * u_squared / (1 + std::sqrt(1 + u_squared * inverse_c2));
+    }
+};
+
 struct StepUnits {
     PolarGrid grid;
     double dt;  // s
@@ -25,12 +36,8 @@ struct StepUnits {
     double half_kick(double field) const { return -kElementaryCharge / kElectronMass * field * 0.5 * dt / speed(); }
     /// Tangent of half the gyration angle in one step at gamma = 1, for a field in T. Negative for B > 0: q = -e.
     double half_turn(double field) const { return -kElementaryCharge / kElectronMass * field * 0.5 * dt; }
-    /// Kinetic energy in eV of u^2 / (1 + gamma) = 1, u in velocity units.
-    double energy_unit_eV() const { return kElectronMass * speed() * speed() / kElementaryCharge; }
-    /// Kinetic energy in eV of a squared gamma v given in velocity units.
-    double energy_eV(double u_squared) const {
-        const double gamma = std::sqrt(1 + u_squared / (light() * light()));
-        return energy_unit_eV() * u_squared / (1 + gamma);
+    EnergyScale energy_scale() const {
+        return {kElectronMass * speed() * speed() / kElementaryCharge, 1 / (light() * light())};
     }
     std::int32_t radial_end() const { return grid.n_r << kRadialBits; }
     std::int32_t azimuthal_end() const { return grid.n_theta << kAzimuthalBits; }

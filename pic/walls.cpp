@@ -30,6 +30,7 @@ WallBook empty_book(double energy_range, int sectors) {
 
 Walls::Walls(const StepUnits& units, const Deck& deck)
     : units_(units),
+      energy_of_(units.energy_scale()),
       wall_(deck.tube.vane_count, deck.tube.gap_share),
       anode_deposit_(static_cast<std::size_t>(units.grid.n_theta)) {
     // Radio-frequency fields lift some electrons above the direct voltage; on the cathode a third of it is ample.
@@ -71,7 +72,7 @@ void Walls::strike(const ElectronStore& store, std::span<const std::uint32_t> hi
         const Electron electron = store.at(index);
         const double u_r = static_cast<double>(electron.u_r);
         const double u_theta = static_cast<double>(electron.u_theta);
-        const double energy = units_.energy_eV(u_r * u_r + u_theta * u_theta);
+        const double energy = energy_of_(u_r * u_r + u_theta * u_theta);
         if (!std::isfinite(energy)) {
             throw NumericsError(
                 "the momentum of an electron at a wall is no longer a finite number; lower clock.step_ps or check the "
@@ -84,7 +85,7 @@ void Walls::strike(const ElectronStore& store, std::span<const std::uint32_t> hi
             book(books_.cathode, node, energy, units);
             cathode_units_ += units;
             impacts_.push_back(
-                {theta, static_cast<float>(energy), static_cast<float>(std::atan2(std::abs(u_theta), std::abs(u_r)))});
+                {theta, static_cast<float>(energy), std::atan2(std::abs(electron.u_theta), std::abs(electron.u_r))});
         } else {
             book(books_.anode, anode_sector(theta), energy, units);
             anode_units_ += units;

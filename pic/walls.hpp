@@ -46,6 +46,7 @@ private:
     std::size_t anode_sector(std::int32_t theta) const;
 
     StepUnits units_;
+    EnergyScale energy_of_;
     VaneWall wall_;
     WallBooks books_;
     std::vector<CathodeImpact> impacts_;

@@ -142,7 +142,7 @@ TEST_CASE("summary.json has its keys in their order") {
     CHECK(summary.at("anode_current_A").contains("mean"));
     CHECK(summary.at("anode_current_A").contains("ci95"));
     CHECK(summary.at("charge_imbalance_C") == 0.0);
-    CHECK(summary.at("steps") == 769);  // 2 ns of 2.603 ps, rounded up
+    CHECK(summary.at("steps") == 616);  // 2 ns of 3.249 ps, rounded up
     const std::string safety = summary.at("safety");
     for (const char* danger : {"never a clearance", "voltage", "microwave", "X-rays", "magnets", "beryllia", "local"}) {
         CAPTURE(danger);

@@ -52,10 +52,10 @@ TEST_CASE("a thick winding: B = mu0 J (r_a - r)") {
 TEST_CASE("self field of a Brillouin hub") {
     Deck deck = hub_deck();
     deck.magnet.self_field = true;
-    deck.clock.step = 1e-13;  // the field is found after 16 steps, before anything has moved far
+    deck.clock.step = 1e-13;  // the field is found after some steps, before anything has moved far
     InteractionSpace space(deck, 1);
     load_hub(space, deck);
-    for (int k = 0; k < 16; ++k) {
+    for (int k = 0; k < kSelfFieldEvery; ++k) {
         space.step();
     }
     // At the cathode the whole current lies outside: mu0 times the integral of e n v dr, by Simpson's rule.

@@ -22,9 +22,10 @@ TEST_CASE("defaults follow from the other keys") {
     CHECK(relative_error(deck.supply.programme[1].time, 5e-9) < kRounding);
     // kT of 1900 K, written with six figures: half a unit of the sixth
     CHECK(relative_error(deck.cathode.launch_temperature, kBoltzmann * 1900 / kElementaryCharge) < 5e-6);
-    // 1/120 of the period of the fastest mode, rounded down to four figures
-    CHECK(deck.clock.step <= 1 / (120 * 4.4e9));
-    CHECK(relative_error(deck.clock.step, 1 / (120 * 4.4e9)) < 1e-3);
+    // 1/60 of the period of the fastest mode, rounded down to four figures
+    const double step = read_text(kSmallDeck + replaced(kCircuit, "4.4 2.45", "8.8 2.45")).clock.step;
+    CHECK(step <= 1 / (60 * 8.8e9));
+    CHECK(relative_error(step, 1 / (60 * 8.8e9)) < 1e-3);
 }
 
 TEST_CASE("the default step without a circuit: orbit, cells at full speed, transit without a field") {

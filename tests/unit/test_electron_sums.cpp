@@ -26,7 +26,7 @@ TEST_CASE("kinetic energy is that of the momentum half an electric kick later") 
                                    (1 + static_cast<double>(cell.slope) * (f - 0.5));
             const double u_theta = static_cast<double>(cloud.store.u_theta[p]) + static_cast<double>(cell.along) +
                                    static_cast<double>(cell.along_rise) * s;
-            sum += cloud.units.energy_eV(u_r * u_r + u_theta * u_theta);
+            sum += cloud.units.energy_scale()(u_r * u_r + u_theta * u_theta);
         }
         return sum;
     }();

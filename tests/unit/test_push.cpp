@@ -62,7 +62,7 @@ double total_energy(const DriftingCloud& cloud, const oracle::Electrons& electro
         const double kick = cloud.units.half_kick(-rise / grid.dr() * (1 + 2 * bend * (f - 0.5)));
         const double u_r = electrons.u_r[p] / cloud.units.speed() + kick;
         const double u_theta = electrons.u_theta[p] / cloud.units.speed();
-        sum += cloud.units.energy_eV(u_r * u_r + u_theta * u_theta) - inner - rise * (f + bend * f * (f - 1));
+        sum += cloud.units.energy_scale()(u_r * u_r + u_theta * u_theta) - inner - rise * (f + bend * f * (f - 1));
     }
     return sum / static_cast<double>(electrons.r.size());
 }

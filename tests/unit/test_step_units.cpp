@@ -38,11 +38,11 @@ TEST_CASE("the tangent of half the gyration angle, negative in a field along +z"
 
 TEST_CASE("kinetic energy by hand: gamma 2, and slow electrons") {
     const double c_squared = kUnits.light() * kUnits.light();
-    CHECK(relative_error(kUnits.energy_eV(3 * c_squared), 510998.950) < kFigures);       // gamma^2 - 1 = 3
-    CHECK(relative_error(kUnits.energy_eV(15 * c_squared), 3 * 510998.950) < kFigures);  // gamma 4
-    CHECK(kUnits.energy_eV(0) == 0);
+    CHECK(relative_error(kUnits.energy_scale()(3 * c_squared), 510998.950) < kFigures);       // gamma^2 - 1 = 3
+    CHECK(relative_error(kUnits.energy_scale()(15 * c_squared), 3 * 510998.950) < kFigures);  // gamma 4
+    CHECK(kUnits.energy_scale()(0) == 0);
     // 1e-6 of c: half m v^2, where gamma - 1 by subtraction would keep four figures only.
-    CHECK(relative_error(kUnits.energy_eV(1e-12 * c_squared), 0.5e-12 * 510998.950) < kFigures);
+    CHECK(relative_error(kUnits.energy_scale()(1e-12 * c_squared), 0.5e-12 * 510998.950) < kFigures);
 }
 
 TEST_CASE("the largest grid a deck may ask for fits the fixed point with room for a step beyond its ends") {
