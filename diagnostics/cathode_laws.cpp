@@ -25,7 +25,10 @@ double secondary_yield(const SecondarySurface& surface, double energy, double an
     const double v = (energy - kThreshold) / (surface.energy_max * growth - kThreshold);
     if (v > 3.6) return yield_max * 1.125 * std::pow(v, -0.35);  // Vaughan 1993, joins the curve at 3.6
     const double k = v < 1 ? 0.56 : 0.25;
-    return yield_max * std::exp(k * (1 - v + std::log(v)));  // (v exp(1 - v))^k
+    // (v exp(1 - v))^k, in single precision: it is drawn for every electron that returns, and no surface is known to
+    // 1e-6
+    const float u = static_cast<float>(v);
+    return yield_max * static_cast<double>(std::exp(static_cast<float>(k) * (1 - u + std::log(u))));
 }
 
 }  // namespace spokewright
