@@ -27,24 +27,23 @@ double ElectronSums::kinetic_energy_eV(const ElectronStore& store, const ForceTa
     return units_.energy_scale().unit_eV * std::accumulate(sums.begin(), sums.end(), 0.0);
 }
 
-void ElectronSums::add_angular_speed(const ElectronStore& store, std::span<double> rows) const {
+void ElectronSums::add_angular_speed(const ElectronStore& store, std::span<double> rows) {
     Block inner, outer;
     // Four electrons in turn add to rows of their own: neighbours in the store are often in the same row, and each
     // addition would wait for the one before.
-    constexpr std::size_t chains = 4;
-    std::vector<double> sums(chains * rows.size(), 0.0);
+    std::fill(chains_.begin(), chains_.end(), 0.0);
     for (std::size_t begin = 0; begin < store.size(); begin += kBlock) {
         const std::size_t end = std::min(begin + kBlock, store.size());
         kernel_.turning(plan_, store.view(), begin, end, inner.data(), outer.data());
         for (std::size_t p = begin; p < end; ++p) {
-            double* row = sums.data() + p % chains * rows.size() + (store.r[p] >> kRadialBits);
+            double* row = chains_.data() + p % kChains * rows.size() + (store.r[p] >> kRadialBits);
             row[0] += static_cast<double>(inner[p - begin]);
             row[1] += static_cast<double>(outer[p - begin]);
         }
     }
     for (std::size_t row = 0; row < rows.size(); ++row) {
-        for (std::size_t chain = 0; chain < chains; ++chain) {
-            rows[row] += sums[chain * rows.size() + row] / units_.dt;
+        for (std::size_t chain = 0; chain < kChains; ++chain) {
+            rows[row] += chains_[chain * rows.size() + row] / units_.dt;
         }
     }
 }

@@ -5,6 +5,7 @@
 
 #include <array>
 #include <span>
+#include <vector>
 
 #include "pic/electron_store.hpp"
 #include "pic/force_table.hpp"
@@ -15,7 +16,11 @@ namespace spokewright {
 class ElectronSums {
 public:
     ElectronSums(const StepUnits& units, int threads = 1, InstructionSet set = fastest_instruction_set())
-        : units_(units), plan_(units.plan()), kernel_(particle_kernel(set)), threads_(threads) {}
+        : units_(units),
+          plan_(units.plan()),
+          kernel_(particle_kernel(set)),
+          threads_(threads),
+          chains_(kChains * (static_cast<std::size_t>(units.grid.n_r) + 1)) {}
 
     /// Kinetic energy at time n of all electrons, eV a macro-electron: u is carried half an electric kick forward,
     /// which is where Boris's scheme passes time n.
@@ -23,16 +28,18 @@ public:
 
     /// Adds the angular speed of the electrons to the rows, shared like their charge: rad/s a macro-electron,
     /// [n_r + 1].
-    void add_angular_speed(const ElectronStore& store, std::span<double> rows) const;
+    void add_angular_speed(const ElectronStore& store, std::span<double> rows);
 
 private:
     static constexpr std::size_t kBlock = 1024;
+    static constexpr std::size_t kChains = 4;
     using Block = std::array<float, kBlock>;
 
     StepUnits units_;
     ParticlePlan plan_;
     const ParticleKernel& kernel_;
     int threads_;
+    std::vector<double> chains_;  // [kChains][n_r + 1]
 };
 
 }  // namespace spokewright

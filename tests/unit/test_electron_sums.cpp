@@ -10,7 +10,7 @@ using namespace spokewright;
 
 TEST_CASE("kinetic energy is that of the momentum half an electric kick later") {
     DriftingCloud cloud(48, 160, 2500);
-    const ElectronSums sums(cloud.units);
+    ElectronSums sums(cloud.units);
     const double found = sums.kinetic_energy_eV(cloud.store, cloud.force);
     const double expected = [&] {
         double sum = 0;
@@ -36,7 +36,7 @@ TEST_CASE("kinetic energy is that of the momentum half an electric kick later") 
 
 TEST_CASE("angular speed is shared between rows like the charge") {
     const StepUnits units{{2e-3, 4e-3, 10e-3, 10, 24}, 1e-12};  // r_c is 10 cells
-    const ElectronSums sums(units);
+    ElectronSums sums(units);
     ElectronStore store;
     store.append({5 * kRadialOne / 2, 7 * kAzimuthalOne, 0.5f, 0.25f});  // 2.5 cells out: rows 2 and 3
     std::vector<double> rows(11, 0.0);
@@ -53,7 +53,7 @@ TEST_CASE("angular speed is shared between rows like the charge") {
 TEST_CASE("sums are the same to the last bit on every instruction set and number of threads") {
     const DriftingCloud cloud(48, 160, 2501);
     const auto totals = [&](int threads, InstructionSet set) {
-        const ElectronSums sums(cloud.units, threads, set);
+        ElectronSums sums(cloud.units, threads, set);
         std::vector<double> rows(49, 0.0);
         sums.add_angular_speed(cloud.store, rows);
         rows.push_back(sums.kinetic_energy_eV(cloud.store, cloud.force));
