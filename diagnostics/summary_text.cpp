@@ -64,7 +64,8 @@ std::string quantity(const MeanWithError& value, const char* unit) {
 std::string percent(const MeanWithError& share) {
     if (!std::isfinite(share.mean)) return "unknown";
     if (!std::isfinite(share.half_width)) return fmt::format("{:.1f} %", 100 * share.mean);
-    return fmt::format("{:.1f} +/- {:.1f} %", 100 * share.mean, 100 * share.half_width);
+    const int decimals = share.half_width > 0 && share.half_width < 0.001 ? 2 : 1;  // "+/- 0.0" would say: exact
+    return fmt::format("{:.{}f} +/- {:.{}f} %", 100 * share.mean, decimals, 100 * share.half_width, decimals);
 }
 
 std::string mode_text(const Summary& s) {

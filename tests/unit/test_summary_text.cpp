@@ -55,6 +55,14 @@ Summary example() {
 
 }  // namespace
 
+TEST_CASE("an efficiency known to under 0.1 % shows two decimals") {
+    Summary s;
+    s.electronic_efficiency = {0.5379, 0.0004};
+    s.total_efficiency = {0.4841, 0.002};
+    const std::vector<std::string> lines = summary_lines(s);
+    CHECK(lines[4] == "efficiency   53.79 +/- 0.04 % electronic, 48.4 +/- 0.2 % in total");
+}
+
 TEST_CASE("the lines, word by word") {
     const std::vector<std::string> expected = {
         "status       settled; means from 62.4 to 200.0 ns of 200.0 ns",
