@@ -5,6 +5,7 @@
 #include <doctest/doctest.h>
 
 #include "tests/one_mode.hpp"
+#include "tests/published_row.hpp"
 #include "tests/relative_error.hpp"
 
 using namespace spokewright;
@@ -37,9 +38,11 @@ TEST_CASE("free ringing: decay, split between walls and load, books") {
     }
     const double decay = std::log(start / bank.energy()) / (omega * dt * steps);
     MESSAGE("1 / decay " << 1 / decay << ", eta_c " << load / (wall + load));
-    CHECK(relative_error(decay, 1 / kLoadedQ) <
-          1e-3);  // implicit midpoint: (omega dt)^2 / 12 = 7e-5; ripple of 1 / Q_L
-    CHECK(relative_error(load / (wall + load), 0.1111) < 2e-4);         // printed with four figures
+    const std::string source = "S. Y. Liao, Microwave Devices and Circuits, example 10-1-1A";
+    check_published({"loaded Q from the decay of a ringing resonator", source, kLoadedQ, 1 / decay, 1e-3,
+                     "implicit midpoint: (omega dt)^2 / 12 = 7e-5; ripple of 1 / Q_L"});
+    check_published({"circuit efficiency from a ringing resonator", source, 0.1111, load / (wall + load), 2e-4,
+                     "printed with four figures"});
     CHECK(relative_error(wall + load + bank.energy(), start) < 1e-10);  // the step loses nothing; 40000 roundings
 }
 
