@@ -118,6 +118,9 @@ std::optional<std::string> apply_key(const DeckKey& key, const GivenKeys& keys, 
     } catch (const BadValue& fault) {
         const std::string& place = is_given ? given->second.place : deck.path;
         throw InputError(fmt::format("{}: {}: {}", place, key.full_name(), fault.what()));
+    } catch (const FileError& fault) {  // a file that the key names; only given keys name files
+        throw FileError(fmt::format("{}: {}: {}; give a file that may be read", given->second.place, key.full_name(),
+                                    fault.what()));
     }
 }
 

@@ -160,8 +160,12 @@ TEST_CASE("a geometry or a mode that cannot be") {
 
 TEST_CASE("field tables: missing, a folder, malformed, short") {
     CHECK(refusal_with("field_T = 0.175", "field_table = gone.txt") ==
-          Refusal{4, "gone.txt: cannot be read: No such file or directory\n"});
-    CHECK(refusal_with("field_T = 0.175", "field_table = .") == Refusal{4, ".: cannot be read: Is a directory\n"});
+          Refusal{4,
+                  "tube.ini:10: magnet.field_table: gone.txt: cannot be read: No such file or directory; give a file "
+                  "that may be read\n"});
+    CHECK(refusal_with("field_T = 0.175", "field_table = .") ==
+          Refusal{
+              4, "tube.ini:10: magnet.field_table: .: cannot be read: Is a directory; give a file that may be read\n"});
     CHECK(refusal_of_table("0 0.17\n2 0.18 T\n5 0.17\n") ==
           Refusal{2, "field.txt:2: 3 columns; allowed: two, the radius in mm and the field in T\n"});
     CHECK(refusal_of_table("0 0.17\n2 strong\n") ==
