@@ -59,6 +59,7 @@ void write_ledger(Hdf5File& file, const Record& record, const Summary& summary) 
     const RunningTotals& totals = record.totals();
     joule("supply_energy_J", totals.supply_energy, "delivered by the supply to the electrons since the start");
     joule("prime_energy_J", totals.prime_energy, "put into the resonators by priming since the start");
+    joule("drive_energy_J", totals.drive_energy, "brought by the incident wave of a generator since the start");
     joule("emission_energy_J", totals.emission_energy, "kinetic energy of all emitted electrons");
     joule("mode_energy_J", totals.mode_energy, "given by the electrons to the resonators");
     joule("wall_loss_J", totals.wall_loss, "lost in the resonators' walls");

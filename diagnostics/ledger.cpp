@@ -11,7 +11,7 @@ namespace {
 EnergyBalance balance_at(const Record& record, std::size_t row) {
     const auto at = [&](const char* name) { return record.column(name).at(row); };
     EnergyBalance balance;
-    balance.in = at("supply_energy_J") + at("prime_energy_J") + at("emission_energy_J");
+    balance.in = at("supply_energy_J") + at("prime_energy_J") + at("drive_energy_J") + at("emission_energy_J");
     balance.out = at("wall_loss_J") + at("load_energy_J") + at("anode_energy_J") + at("cathode_energy_J");
     balance.stored_change = at("kinetic_energy_J") + at("space_charge_energy_J") + at("resonator_energy_J");
     return balance;

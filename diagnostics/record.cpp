@@ -61,6 +61,7 @@ void add_ledger_columns(Columns& columns) {
     };
     add("supply_energy_J", "J", "delivered by the supply to the electrons since the start");
     add("prime_energy_J", "J", "put into the resonators by priming since the start");
+    add("drive_energy_J", "J", "brought by the incident wave of a generator since the start");
     add("emission_energy_J", "J", "kinetic energy of all emitted electrons since the start");
     add("wall_loss_J", "J", "lost in the resonators' walls since the start");
     add("load_energy_J", "J", "delivered to the load since the start");
@@ -133,6 +134,7 @@ void Record::add(const Tally& tally) {
     totals_.cathode_hits += static_cast<double>(tally.cathode_hits);
     totals_.supply_energy += tally.supply_energy;
     totals_.prime_energy += tally.prime_energy;
+    totals_.drive_energy += tally.drive_energy;
     totals_.mode_energy += tally.mode_energy;
     totals_.wall_loss += tally.wall_loss;
     totals_.load_energy += tally.load_energy;
@@ -211,6 +213,7 @@ void Record::append_charge(const SpaceView& view) {
 void Record::append_ledger(const SpaceView& view) {
     push(totals_.supply_energy);
     push(totals_.prime_energy);
+    push(totals_.drive_energy);
     push(totals_.emission_energy);
     push(totals_.wall_loss);
     push(totals_.load_energy);

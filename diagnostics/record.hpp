@@ -27,11 +27,11 @@ struct Column {
 
 /// Sums since the start of the run. Doubles only: counts stay exact below 2^53, and the struct is its own file format.
 struct RunningTotals {
-    double time = 0;                                                                              // s, sum of the steps
-    double induced_charge = 0;                                                                    // C
-    double primaries = 0, secondaries = 0, anode_hits = 0, cathode_hits = 0;                      // macro-electrons
-    double supply_energy = 0, prime_energy = 0, mode_energy = 0, wall_loss = 0, load_energy = 0;  // J
-    double emission_energy = 0, anode_energy = 0, cathode_energy = 0;                             // J
+    double time = 0;                                                          // s, sum of the steps
+    double induced_charge = 0;                                                // C
+    double primaries = 0, secondaries = 0, anode_hits = 0, cathode_hits = 0;  // macro-electrons
+    double supply_energy = 0, prime_energy = 0, drive_energy = 0, mode_energy = 0, wall_loss = 0, load_energy = 0;  // J
+    double emission_energy = 0, anode_energy = 0, cathode_energy = 0;                                               // J
     double electron_steps = 0;   // sum of the electrons in flight over the steps
     double anode_voltage = 0;    // V, at the last step (not a sum)
     double charge_mismatch = 0;  // macro-electrons, the largest seen at a sample (not a sum)

@@ -21,6 +21,9 @@ constexpr double kSpokeShare = 0.05;
 constexpr double kSpokeNoise = 3;
 // A ledger that is open by more than this is worth a word; the model's own trial closed to 0.2 %.
 constexpr double kImbalanceWarning = 0.01;
+// A mean frequency is the generator's when it agrees within its half-width and one part in a million: a beat would be
+// slower than the longest runs.
+constexpr double kLocked = 1e-6;
 // A mode that doubles its energy between neighbouring sixths and is above 1 % of the anode voltage is still starting.
 constexpr double kGrowth = 2;
 constexpr double kGrowthShare = 0.01;
@@ -41,6 +44,7 @@ private:
     void settle();
     void take_means();
     void describe_modes();
+    void describe_drive();
     void describe_spokes();
     void balance();
     void describe_heat(const WallBook& anode);
@@ -125,6 +129,15 @@ void Summariser::describe_modes() {
         s_.frequency_shift_MHz = {(s_.frequency_GHz.mean - mode.frequency * 1e-9) * 1e3,
                                   s_.frequency_GHz.half_width * 1e3};
     }
+}
+
+void Summariser::describe_drive() {
+    if (deck_.drive.power <= 0) return;
+    s_.drive_power_W = deck_.drive.power;
+    s_.drive_frequency_GHz = deck_.drive.frequency * 1e-9;
+    const double off = std::abs(s_.frequency_GHz.mean - s_.drive_frequency_GHz);
+    s_.locked =
+        s_.dominant_mode == deck_.drive.mode && off <= s_.frequency_GHz.half_width + kLocked * s_.drive_frequency_GHz;
 }
 
 void Summariser::describe_spokes() {
@@ -255,6 +268,7 @@ Summary Summariser::run(const WallBooks& books) {
     settle();
     take_means();
     describe_modes();
+    describe_drive();
     describe_spokes();
     balance();
     describe_heat(books.anode);

@@ -54,6 +54,9 @@ struct Summary {
     int spoke_count = 0;                                    // 0 = none
     MeanWithError spoke_strength = kUndefinedMean;          // |Q_m| / Q_0 beyond mid-gap: 0 even ring, 1 thin spokes
     MeanWithError hub_radius_mm, frequency_GHz = kUndefinedMean, frequency_shift_MHz = kUndefinedMean;
+    double drive_power_W = 0;  // of a generator at drive_frequency_GHz, 0 without
+    double drive_frequency_GHz = kUndefined;
+    bool locked = false;  // the driven mode runs at the generator's frequency
     std::vector<ModeSummary> modes;
     std::vector<ModeEvent> mode_events;
     double energy_imbalance = kUndefined;  // the worse of the whole run and the averaged part

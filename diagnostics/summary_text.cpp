@@ -201,6 +201,9 @@ Json summary_json(const Summary& s) {
             {"hub_radius_mm", mean_json(s.hub_radius_mm)},
             {"frequency_GHz", mean_json(s.frequency_GHz)},
             {"frequency_shift_MHz", mean_json(s.frequency_shift_MHz)},
+            {"drive_power_W", s.drive_power_W},
+            {"drive_frequency_GHz", number(s.drive_frequency_GHz)},
+            {"locked", s.drive_power_W > 0 ? Json(s.locked) : Json(nullptr)},
             {"modes", modes},
             {"mode_events", events},
             {"energy_imbalance", number(s.energy_imbalance)},
@@ -235,6 +238,10 @@ std::vector<std::string> summary_lines(const Summary& s) {
     add("mode", mode_text(s));
     add("spokes", spoke_text(s));
     add("frequency", frequency_text(s));
+    if (s.drive_power_W > 0) {
+        add("generator", fmt::format("{} at {:.6g} GHz {} the tube", quantity(s.drive_power_W, "W"),
+                                     s.drive_frequency_GHz, s.locked ? "locks" : "does not lock"));
+    }
     add("heat", heat_text(s));
     add("cathode", fmt::format("emits {}, takes back {}", quantity(s.emitted_current_A.mean, "A"),
                                quantity(s.cathode_return_current_A.mean, "A")));

@@ -28,6 +28,7 @@ struct Tally {
 
     double supply_energy = 0;    // delivered by the supply to the electrons
     double prime_energy = 0;     // put into the resonators from outside
+    double drive_energy = 0;     // brought by the generator's incident wave
     double mode_energy = 0;      // given by the electrons to the resonators
     double wall_loss = 0;        // in the resonators' Q_0
     double load_energy = 0;      // into the load through Q_ext

@@ -20,7 +20,9 @@ double Resonator::energy() const {
     return 0.5 * capacitance * voltage * voltage + 0.5 * current * current / inverse_inductance;
 }
 
-Resonators::Resonators(const CircuitSettings& circuit, const LoadSettings& load, int vane_count, double dt) : dt_(dt) {
+Resonators::Resonators(const CircuitSettings& circuit, const LoadSettings& load, int vane_count, double dt,
+                       const DriveSettings& drive)
+    : dt_(dt), drive_(drive) {
     if (circuit.source == CircuitSource::none) {
         return;
     }
@@ -42,18 +44,32 @@ Resonators::Resonators(const CircuitSettings& circuit, const LoadSettings& load,
     }
 }
 
-ResonatorEnergy Resonators::advance(std::span<const double> induced) {
+double Resonators::drive_current(const Resonator& resonator, double time) const {
+    if (drive_.power <= 0 || resonator.pattern.mode != drive_.mode || time < drive_.start) {
+        return 0;
+    }
+    const double phase = 2 * kPi * drive_.frequency * time + drive_.phase;
+    const double patterns = resonator.pattern.standing == Standing::alternating ? 1 : 2;
+    const double amplitude = std::sqrt(8 * resonator.load_conductance * drive_.power / patterns);
+    // cos(n theta - omega t): the sine pattern lags by a quarter period.
+    return amplitude * (resonator.pattern.standing == Standing::sine ? std::sin(phase) : std::cos(phase));
+}
+
+ResonatorEnergy Resonators::advance(std::span<const double> induced, double time) {
     ResonatorEnergy energy;
     for (std::size_t k = 0; k < resonators_.size(); ++k) {
         Resonator& r = resonators_[k];
         const double conductance = r.wall_conductance + r.load_conductance;
-        const double middle = (induced[k] / dt_ + 2 * r.capacitance / dt_ * r.voltage - r.current) /
+        const double drive = drive_current(r, time + 0.5 * dt_);
+        const double incident = drive == 0 ? 0 : 0.5 * drive / r.load_conductance;  // V, the generator's wave
+        const double middle = (induced[k] / dt_ + drive + 2 * r.capacitance / dt_ * r.voltage - r.current) /
                               (2 * r.capacitance / dt_ + conductance + 0.5 * dt_ * r.inverse_inductance);
         r.voltage = 2 * middle - r.voltage;
         r.current += dt_ * middle * r.inverse_inductance;
         energy.from_electrons += middle * induced[k];
         energy.wall_loss += dt_ * r.wall_conductance * middle * middle;
-        energy.load += dt_ * r.load_conductance * middle * middle;
+        energy.load += dt_ * r.load_conductance * (middle - incident) * (middle - incident);
+        energy.drive += dt_ * r.load_conductance * incident * incident;
     }
     return energy;
 }

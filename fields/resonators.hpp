@@ -34,20 +34,25 @@ struct Resonator {
     double energy() const;  // J
 };
 
-/// Energy that passed in one step, J.
+/// Energy that passed in one step, J. Out of the coupling goes `load`, into it comes `drive`: the wave that the load
+/// sends back is the generator's, so that without a generator `load` is all that the load conductance takes.
 struct ResonatorEnergy {
     double from_electrons = 0;
     double wall_loss = 0;
     double load = 0;
+    double drive = 0;
 };
 
 class Resonators {
 public:
-    /// An empty bank when the circuit has no source.
-    Resonators(const CircuitSettings& circuit, const LoadSettings& load, int vane_count, double dt);
+    /// An empty bank when the circuit has no source. `drive`: a generator behind the output coupling of one mode, whose
+    /// incident wave carries the available power P: a current I cos(omega t + phase) across the load conductance G with
+    /// P = I^2 / (8 G); the two patterns of a mode n < N/2 share it a quarter period apart, as a wave with +theta.
+    Resonators(const CircuitSettings& circuit, const LoadSettings& load, int vane_count, double dt,
+               const DriveSettings& drive = {});
 
-    /// One step; `induced`: rise of q_k within it, C, one a resonator.
-    ResonatorEnergy advance(std::span<const double> induced);
+    /// One step from `time` (s) on; `induced`: rise of q_k within it, C, one a resonator.
+    ResonatorEnergy advance(std::span<const double> induced, double time = 0);
 
     /// Adds a wave of `voltage` (V) to mode number n, turning with +theta (standing for the pi mode). Returns J put in.
     double prime(int mode, double voltage);
@@ -57,8 +62,12 @@ public:
     std::span<Resonator> all() { return resonators_; }
 
 private:
+    /// Generator current into one resonator at a time, A.
+    double drive_current(const Resonator& resonator, double time) const;
+
     std::vector<Resonator> resonators_;
     double dt_;
+    DriveSettings drive_;
 };
 
 }  // namespace spokewright

@@ -85,6 +85,15 @@ struct PrimeSettings {
     double time = 0;     // s
 };
 
+/// A matched generator behind the output coupling of one mode (injection locking).
+struct DriveSettings {
+    int mode = 0;          // azimuthal mode number (resolved: the pi mode unless given)
+    double power = 0;      // W, available from the generator; 0 = none
+    double frequency = 0;  // Hz (resolved: the cold frequency of the mode unless given)
+    double phase = 0;      // rad, at time 0
+    double start = 0;      // s
+};
+
 struct GridSettings {
     int radial_cells = 48;    // at most 120
     int azimuthal_cells = 0;  // at most 504; resolved: 16 a vane, or 64 in a smooth bore
@@ -115,6 +124,7 @@ struct Deck {
     CircuitSettings circuit;
     LoadSettings load;
     PrimeSettings prime;
+    DriveSettings drive;
     GridSettings grid;
     ClockSettings clock;
     ElectronSettings electrons;

@@ -24,6 +24,7 @@ constexpr Unit kKelvin{"K", 1};
 constexpr Unit kElectronVolt{"eV", 1};
 constexpr Unit kAmperePerSquareCentimetre{"A/cm^2", 1e4};
 constexpr Unit kRichardson{"A/(cm^2 K^2)", 1e4};
+constexpr Unit kWatt{"W", 1};
 constexpr Unit kGigahertz{"GHz", 1e9};
 constexpr Unit kDegree{"deg", kPi / 180};
 
@@ -233,6 +234,17 @@ std::vector<DeckKey> circuit_keys() {
          preset("0"), "Starting vane voltage of that mode; 0 starts from noise.", ""},
         {"prime", "time_ns", real(&Deck::prime, &PrimeSettings::time, kNanosecond, between(0, 1e6)), preset("0"),
          "When the priming is applied.", ""},
+        {"drive", "mode", text_of("", "1..N/2, 0 the pi mode", read_drive_mode), computed("N/2", pi_mode_text),
+         "Mode that a generator drives through its output coupling.", ""},
+        {"drive", "available_power_W",
+         real(&Deck::drive, &DriveSettings::power, kWatt, between(0, 1e9), require_driven_mode), preset("0"),
+         "Power that the matched generator can give; 0 is none. Wants load.vswr = 1.", ""},
+        {"drive", "frequency_GHz", text_of("GHz", "within 20 % of the mode's cold frequency", read_drive_frequency),
+         computed("cold frequency of the mode", drive_frequency_text), "Frequency of the generator.", ""},
+        {"drive", "phase_deg", real(&Deck::drive, &DriveSettings::phase, kDegree, between(-360, 360)), preset("0"),
+         "Phase of the generator at the start of the run.", ""},
+        {"drive", "start_ns", real(&Deck::drive, &DriveSettings::start, kNanosecond, between(0, 1e6)), preset("0"),
+         "When the generator is switched on.", ""},
     };
 }
 

@@ -18,6 +18,7 @@ namespace spokewright {
 namespace {
 
 constexpr Unit kNanosecond{"ns", 1e-9};
+constexpr Unit kGigahertz{"GHz", 1e9};
 constexpr int kLargestAzimuthalCells = 504;
 constexpr int kSmallestAzimuthalCells = 8;
 
@@ -106,9 +107,38 @@ void read_mode_numbers(Deck& deck, std::string_view text) {
     }
 }
 
+namespace {
+
+int read_mode(const Deck& deck, std::string_view text) {
+    const int mode = read_count(text, 0, 1000);
+    if (mode != 0) require_mode_number(mode, deck.tube.vane_count);
+    return mode;
+}
+
+/// `section` names the mode's key, `nothing` the value that needs no mode.
+void require_mode_in_circuit(const Deck& deck, int mode, std::string_view section, std::string_view nothing) {
+    if (mode == 0 && deck.tube.vane_count % 2 == 1) {
+        throw BadValue(fmt::format("an odd block of {} vanes has no pi mode; allowed: a {}.mode of 1..{}",
+                                   deck.tube.vane_count, section, deck.tube.vane_count / 2));
+    }
+    if (std::ranges::count(deck.circuit.modes, mode, &ModeEntry::number) == 0) {
+        std::vector<int> numbers;
+        for (const ModeEntry& entry : deck.circuit.modes) numbers.push_back(entry.number);
+        throw BadValue(fmt::format("mode {} is not in circuit.mode_numbers; allowed: {}, or one of the modes {}", mode,
+                                   nothing, numbers.empty() ? "(none)" : fmt::format("{}", fmt::join(numbers, ", "))));
+    }
+}
+
+/// Cold frequency of the driven mode, Hz; 0 when the circuit does not have it.
+double driven_frequency(const Deck& deck) {
+    const auto mode = std::ranges::find(deck.circuit.modes, deck.drive.mode, &ModeEntry::number);
+    return mode == deck.circuit.modes.end() ? 0 : mode->frequency;
+}
+
+}  // namespace
+
 void read_prime_mode(Deck& deck, std::string_view text) {
-    deck.prime.mode = read_count(text, 0, 1000);
-    if (deck.prime.mode != 0) require_mode_number(deck.prime.mode, deck.tube.vane_count);
+    deck.prime.mode = read_mode(deck, text);
 }
 
 std::string pi_mode_text(const Deck& deck) {
@@ -116,18 +146,35 @@ std::string pi_mode_text(const Deck& deck) {
 }
 
 void require_primed_mode(const Deck& deck) {
-    if (deck.prime.voltage <= 0) return;
-    if (deck.prime.mode == 0 && deck.tube.vane_count % 2 == 1) {
-        throw BadValue(fmt::format("an odd block of {} vanes has no pi mode; allowed: a prime.mode of 1..{}",
-                                   deck.tube.vane_count, deck.tube.vane_count / 2));
+    if (deck.prime.voltage > 0) require_mode_in_circuit(deck, deck.prime.mode, "prime", "0 V");
+}
+
+void read_drive_mode(Deck& deck, std::string_view text) {
+    deck.drive.mode = read_mode(deck, text);
+}
+
+void require_driven_mode(const Deck& deck) {
+    if (deck.drive.power <= 0) return;
+    require_mode_in_circuit(deck, deck.drive.mode, "drive", "0 W");
+    if (deck.load.vswr != 1) {
+        throw BadValue(fmt::format("given beside load.vswr = {}; allowed: 0 W, or a matched load (load.vswr = 1)",
+                                   deck.load.vswr));
     }
-    if (std::ranges::count(deck.circuit.modes, deck.prime.mode, &ModeEntry::number) == 0) {
-        std::vector<int> numbers;
-        for (const ModeEntry& mode : deck.circuit.modes) numbers.push_back(mode.number);
-        throw BadValue(fmt::format("mode {} is not in circuit.mode_numbers; allowed: 0 V, or one of the modes {}",
-                                   deck.prime.mode,
-                                   numbers.empty() ? "(none)" : fmt::format("{}", fmt::join(numbers, ", "))));
+}
+
+void read_drive_frequency(Deck& deck, std::string_view text) {
+    constexpr double kReach = 0.2;  // of the mode's frequency: beyond, the mode's resonator says nothing true
+    const double cold = driven_frequency(deck);
+    deck.drive.frequency = read_real(text, between(0, 1000), kGigahertz) * kGigahertz.to_si;
+    if (deck.drive.power > 0 && std::abs(deck.drive.frequency - cold) > kReach * cold) {
+        throw BadValue(fmt::format("{} GHz is far from mode {} at {:g} GHz; allowed: {:g}..{:g} GHz", text,
+                                   deck.drive.mode, cold * 1e-9, (1 - kReach) * cold * 1e-9,
+                                   (1 + kReach) * cold * 1e-9));
     }
+}
+
+std::string drive_frequency_text(const Deck& deck) {
+    return fmt::format("{:.10g}", driven_frequency(deck) * 1e-9);
 }
 
 void read_radial_cells(Deck& deck, std::string_view text) {

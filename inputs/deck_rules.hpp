@@ -33,6 +33,13 @@ void read_prime_mode(Deck& deck, std::string_view text);
 std::string pi_mode_text(const Deck& deck);
 void require_primed_mode(const Deck& deck);
 
+/// As for priming; a driven mode must be in the circuit and its load matched, for the generator is the load's other
+/// end.
+void read_drive_mode(Deck& deck, std::string_view text);
+void require_driven_mode(const Deck& deck);
+void read_drive_frequency(Deck& deck, std::string_view text);
+std::string drive_frequency_text(const Deck& deck);
+
 /// Cells no wider than the cathode's radius: the push counts on an electron not crossing the axis.
 void read_radial_cells(Deck& deck, std::string_view text);
 void read_azimuthal_cells(Deck& deck, std::string_view text);

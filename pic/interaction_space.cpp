@@ -24,7 +24,7 @@ InteractionSpace::InteractionSpace(const Deck& deck, int threads, InstructionSet
       units_{grid_of(deck), deck.clock.step},
       macro_charge_(macro_charge_of(deck)),
       magnet_(deck.magnet, units_.grid),
-      resonators_(deck.circuit, deck.load, deck.tube.vane_count, deck.clock.step),
+      resonators_(deck.circuit, deck.load, deck.tube.vane_count, deck.clock.step, deck.drive),
       supply_(deck.supply, vacuum_capacitance(deck.tube), deck.clock.step),
       poisson_(units_.grid),
       surface_(units_.grid),
@@ -94,13 +94,14 @@ void InteractionSpace::advance_circuit() {
     const double risen = whole - whole_anode_charge_ + macro_charge_ * static_cast<double>(walls_.anode_hits());
     whole_anode_charge_ = whole;
 
-    const ResonatorEnergy energy = resonators_.advance(induced_);
+    const ResonatorEnergy energy = resonators_.advance(induced_, tally_.time - units_.dt);
     const PrimeSettings& prime = deck_.prime;
     const bool due = prime.time >= tally_.time - units_.dt && prime.time < tally_.time;
     tally_.prime_energy = prime.voltage > 0 && due ? resonators_.prime(prime.mode, prime.voltage) : 0;
     tally_.mode_energy = energy.from_electrons;
     tally_.wall_loss = energy.wall_loss;
     tally_.load_energy = energy.load;
+    tally_.drive_energy = energy.drive;
     tally_.induced_charge = -risen;  // electrons are negative: their arrival is a current out of the supply
     tally_.supply_energy = supply_.advance(tally_.time, tally_.induced_charge);
     tally_.anode_voltage = supply_.voltage();

@@ -129,7 +129,7 @@ def events(run):
 def ledger(run):
     """Rows (description, cell, unit, share of what went in); one prefix for all energies, so that they can be added."""
     energies = {name: value for name, value, unit, _ in run.ledger if unit == "J"}
-    went_in = sum(energies.get(name, 0.0) for name in ("supply_energy_J", "prime_energy_J", "emission_energy_J"))
+    went_in = sum(energies.get(name, 0.0) for name in ("supply_energy_J", "prime_energy_J", "drive_energy_J", "emission_energy_J"))
     factor, prefix = prefix_for(max([abs(value) for value in energies.values()] + [0.0]) / 10)
     rows = []
     for name, value, unit, description in run.ledger:

@@ -125,6 +125,23 @@ TEST_CASE("only a mode of the table can be primed") {
           "--set prime.mode=6: prime.mode: mode 6 of 10 vanes; allowed: mode numbers 1..5");
 }
 
+TEST_CASE("a generator wants a mode of the table, near its frequency, and a matched load") {
+    const Deck deck = read_text(kSmallDeck + kCircuit, {"drive.available_power_W=10"});
+    CHECK(deck.drive.mode == 5);
+    CHECK(relative_error(deck.drive.frequency, 2.45e9) < kRounding);
+    CHECK(override_message("drive.mode=6") ==
+          "--set drive.mode=6: drive.mode: mode 6 of 10 vanes; allowed: mode numbers 1..5");
+    CHECK(message_of(kSmallDeck + kCircuit, {"drive.mode=4", "drive.available_power_W=5"}) ==
+          "--set drive.available_power_W=5: drive.available_power_W: mode 4 is not in circuit.mode_numbers; "
+          "allowed: 0 W, or one of the modes 3, 5");
+    CHECK(message_of(kSmallDeck + kCircuit, {"load.vswr=1.5", "drive.available_power_W=5"}) ==
+          "--set drive.available_power_W=5: drive.available_power_W: given beside load.vswr = 1.5; "
+          "allowed: 0 W, or a matched load (load.vswr = 1)");
+    CHECK(message_of(kSmallDeck + kCircuit, {"drive.frequency_GHz=3", "drive.available_power_W=5"}) ==
+          "--set drive.frequency_GHz=3: drive.frequency_GHz: 3 GHz is far from mode 5 at 2.45 GHz; "
+          "allowed: 1.96..2.94 GHz");
+}
+
 TEST_CASE("azimuthal cells are a multiple of the vanes, with the nearest named") {
     CHECK(override_message("grid.azimuthal_cells=123") ==
           "--set grid.azimuthal_cells=123: grid.azimuthal_cells: 123 is not a multiple of vane_count = 10; "

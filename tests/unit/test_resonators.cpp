@@ -156,3 +156,63 @@ TEST_CASE("without a circuit the bank is empty and does nothing") {
     CHECK(bank.prime(5, 600) == 0);
     CHECK(bank.energy() == 0);
 }
+
+TEST_CASE("a generator brings its available power, on average and in every mode") {
+    for (const int mode : {4, 5}) {
+        const double frequency = mode == 4 ? 2.8e9 : 2.45e9, period = 1 / frequency;
+        const double dt = period / 200;
+        Resonators bank(circuit(1e9, 60), {}, 10, dt, {mode, 25, frequency, 0.3, 0});
+        double brought = 0, left = 0;
+        for (int k = 0; k < 200 * 400; ++k) {  // 400 periods, twenty fill times
+            const ResonatorEnergy energy = bank.advance(std::vector<double>(5, 0.0), k * dt);
+            if (k < 200 * 300) continue;
+            brought += energy.drive;
+            left += energy.load;
+        }
+        CHECK(relative_error(brought / (100 * period), 25) < 1e-9);  // whole periods
+        CHECK(relative_error(left, brought) < 1e-6);  // no loss in the walls: all of it comes back, but for e^-20
+    }
+}
+
+TEST_CASE("a driven resonator stands at the phasor of the parallel circuit, at and beside resonance") {
+    const double cold = 2.45e9, unloaded_q = 400, external_q = 80, power = 40;
+    for (const double share : {1.0, 1.004, 0.99}) {
+        const double frequency = share * cold, dt = 1 / frequency / 400, omega = 2 * kPi * frequency;
+        Resonators bank(circuit(unloaded_q, external_q), {}, 10, dt, {5, power, frequency, 0, 0});
+        const Resonator& pi_mode = bank.all().back();
+        for (int k = 0; k < 400 * 500; ++k) bank.advance(std::vector<double>(5, 0.0), k * dt);
+        const double c = pi_mode.capacitance, g = pi_mode.wall_conductance + pi_mode.load_conductance;
+        const std::complex<double> y(g, omega * c * (1 - 1 / (share * share)));
+        const std::complex<double> expected = std::sqrt(8 * pi_mode.load_conductance * power) / y;  // at a whole period
+        const double scale = std::abs(expected);
+        CHECK(std::abs(pi_mode.voltage - expected.real()) < 2e-3 * scale);  // (omega dt)^2 / 12 = 2e-5, times Q_L
+    }
+}
+
+TEST_CASE("books of a driven step: generator and electrons gave wall loss, load and rise of energy, to rounding") {
+    std::mt19937 random(6);
+    Resonators bank(circuit(300, 40), {}, 10, kStep, {4, 1e4, 2.81e9, 1, 0.1e-9});
+    bool driven = false;
+    for (int k = 0; k < 500; ++k) {
+        const double before = bank.energy();
+        const ResonatorEnergy energy = bank.advance(random_charge(5, random), k * kStep);
+        const double open =
+            energy.from_electrons + energy.drive - energy.wall_loss - energy.load - bank.energy() + before;
+        CHECK(std::abs(open) < kRounding * (before + std::abs(energy.from_electrons) + energy.drive));
+        CHECK((energy.drive > 0) == (k * kStep + 0.5 * kStep >= 0.1e-9));
+        driven = driven || energy.drive > 0;
+    }
+    CHECK(driven);
+}
+
+TEST_CASE("the generator drives the wave that turns with the electrons, and no other mode") {
+    Resonators bank(circuit(300, 40), {}, 10, kStep, {4, 100, 2.8e9, 0, 0});
+    for (int k = 0; k < 20000; ++k) bank.advance(std::vector<double>(5, 0.0), k * kStep);
+    const auto all = bank.all();  // 3 cos, 3 sin, 4 cos, 4 sin, 5
+    const std::complex<double> j(0, 1);
+    const auto forward = 0.5 * (all[2].amplitude() + j * all[3].amplitude());
+    const auto backward = 0.5 * (all[2].amplitude() - j * all[3].amplitude());
+    CHECK(std::abs(forward) > 10);
+    CHECK(std::abs(backward) < 2e-2 * std::abs(forward));  // amplitude() of a driven circuit is exact at resonance only
+    CHECK(all[0].energy() + all[1].energy() + all[4].energy() == 0);
+}
