@@ -67,7 +67,7 @@ VoltageWindow window_of(const Chart& chart, bool with_harmonics) {
     for (const ChartWave& wave : chart.waves) {
         if (wave.mode == chart.pi.mode || (wave.k != 0 && !with_harmonics)) continue;
         const double threshold = wave.hartree_voltage.value;
-        if (threshold <= window.low) {
+        if (threshold <= window.low * (1 + 1e-9)) {  // two equal speeds may round apart
             window.below.push_back(wave);
         } else if (threshold < window.high) {
             window.high = threshold;

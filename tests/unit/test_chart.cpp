@@ -73,6 +73,9 @@ TEST_CASE("window: from the pi mode's threshold to the next one of another mode,
     CHECK(fast.window.high == fast.hull_voltage.value);
     CHECK(fast.window.limiting_mode == 0);
 
+    const Chart twin = chart_of({"circuit.frequencies_GHz=3.43 2.45"});  // 3.43 / 7 = 2.45 / 5 but for rounding
+    CHECK(twin.harmonic_window.below.size() == 2);
+
     const Chart slow = chart_of({"circuit.frequencies_GHz=1.4 2.45"});  // 1.4 / 3 < 2.45 / 5
     REQUIRE(slow.window.below.size() == 1);
     CHECK(slow.window.below[0].mode == 3);
