@@ -44,8 +44,9 @@ struct PushLoops : LaneShares<Lanes> {
         return Lanes::fma(Lanes::multiply(sum, x2), x, x);
     }
 
-    /// What the electrons of a block feel. A block passes through three short loops instead of one long one, so that
-    /// the processor has several vectors in flight while it waits for roots and divisions: 1.4 times as fast.
+    /// What the electrons of a block feel. A block passes through short loops one after the other instead of a long
+    /// one, so that the processor has several vectors in flight while it waits for roots and divisions: 1.4 times as
+    /// fast.
     struct Block {
         static constexpr std::size_t kSize = 256;
         alignas(64) float kick_r[kSize];
@@ -84,9 +85,8 @@ struct PushLoops : LaneShares<Lanes> {
         const Int theta = Lanes::load(electrons.theta + p);
         const Vector u{Lanes::load(electrons.u_r + p), Lanes::load(electrons.u_theta + p)};
 
-        // Along a straight line from (rho, 0) in the local Cartesian frame, all lengths times
-        // gamma: to (x, u_theta), at the distance `reach` from the axis. One division by gamma * sum * reach serves
-        // all.
+        // Along a straight line from (rho, 0) in the local Cartesian frame, all lengths times gamma: to (x, u_theta),
+        // at the distance `reach` from the axis. One division by gamma * sum * reach serves all.
         const Real rho = Lanes::fma(Lanes::real(r), Lanes::all(1.0f / kRadialOne), Lanes::all(plan.cathode_cells));
         const Real gamma = Lanes::root(gamma_squared(plan, u));
         const Real x = Lanes::fma(rho, gamma, u.r);

@@ -11,8 +11,6 @@ template <class Lanes>
 struct ScatterLoops : LaneShares<Lanes> {
     using Base = LaneShares<Lanes>;
     using Base::area_share;
-    using Base::gamma_squared;
-    using Base::half_kick;
     using Base::kWidth;
     using Base::place;
     using Base::row_bend;
@@ -20,7 +18,6 @@ struct ScatterLoops : LaneShares<Lanes> {
     using typename Base::Place;
     using typename Base::Real;
     using typename Base::Tail;
-    using typename Base::Vector;
 
     /// What a block of electrons leaves, and where.
     struct Deposit {
