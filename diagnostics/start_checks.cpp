@@ -7,7 +7,7 @@
 #include <cmath>
 #include <limits>
 
-#include "diagnostics/cathode_laws.hpp"
+#include "diagnostics/current_estimate.hpp"
 #include "diagnostics/theory.hpp"
 #include "fields/resonators.hpp"
 #include "inputs/constants.hpp"
@@ -39,16 +39,13 @@ constexpr Limit kElectronsACell{4, 0.2};
 constexpr Limit kCellsAWave{8, 4};
 // The same in time; the drive is sampled once a step.
 constexpr Limit kStepsAPeriod{30, 10};
-// A wave J_n(k r) departs from the static r^n by (k r)^2 / (4 (n + 1)) of itself. M. Abramowitz & I. A. Stegun,
-// Handbook of Mathematical Functions, 9.1.10.
+// Share of a mode's field by which static fields are off (theory.hpp).
 constexpr Limit kStaticError{0.05, 0.5};
 // The load's susceptance moves a mode by Im(y) / (2 Q_ext) of its frequency, to first order: at 5 % the second order is
 // 0.4 % of the frequency, and a load that no longer is a small addition is a part of the resonator.
 constexpr Limit kLoadShift{0.05, 0.25};
 // Pushing, pulling and loading together move a mode by a few per cent (common practice, no source).
 constexpr double kFrequencyRoom = 0.05;
-// Share of the hub that reaches the anode each period: a trial run drew 0.2, a published pulsed tube about 1.
-constexpr double kHubShareAPeriod = 0.2;
 
 class Checks {
 public:
@@ -123,8 +120,7 @@ void Checks::check_step() {
             "{:.3g}",
             omega_c * dt, kAngleAStep.doubtful, kAngleAStep.hopeless, kAngleAStep.doubtful / omega_c * 1e12);
     });
-    const double energy = kElementaryCharge * voltage_ / (kElectronMass * kLightSpeed * kLightSpeed);  // gamma - 1
-    const double speed = kLightSpeed * std::sqrt(energy * (2 + energy)) / (1 + energy);
+    const double speed = electron_speed(voltage_);
     const double leap = speed * dt / ((r_a_ - r_c_) / deck_.grid.radial_cells);
     limit(leap, kCellsAStep, [&] {
         return fmt::format(
@@ -201,8 +197,8 @@ void Checks::check_mode(const ModeEntry& mode) {
             mode.number, steps, kStepsAPeriod.doubtful, kStepsAPeriod.hopeless,
             1e12 / (kStepsAPeriod.doubtful * mode.frequency));
     });
-    const double radius = 2 * kPi * mode.frequency * r_a_ / kLightSpeed;
-    const double error = radius * radius / (4 * (mode.number + 1));
+    const double radius = electrical_radius(r_a_, mode.frequency);
+    const double error = static_field_error(radius, mode.number);
     limit(error, kStaticError, [&] {
         return fmt::format(
             "omega r_a / c is {:.2f} in mode {}: the static fields of this model are off by about {:.0f} % there (good "
@@ -262,26 +258,13 @@ void Checks::check_hull() {
 }
 
 void Checks::check_emission() {
-    double density = std::numeric_limits<double>::infinity();
     const CathodeSettings& cathode = deck_.cathode;
-    if (cathode.emission == EmissionLaw::thermionic) {
-        density =
-            thermionic_current_density(cathode.richardson_constant, cathode.temperature, cathode.work_function, 0);
-    }
-    if (cathode.emission_limit > 0) density = std::min(density, cathode.emission_limit);
-    if (!std::isfinite(density) || cathode.secondary_emission) return;  // secondaries feed a cold cathode
-    const double height = deck_.tube.axial_height;
-    const double cap = density * 2 * kPi * r_c_ * height;
-    double expected = 0;
-    if (voltage_ >= hull_) {
-        expected = space_charge_limited_current_per_length(voltage_, r_c_, r_a_) * height;
-    } else if (!deck_.circuit.modes.empty()) {
-        const double hub = brillouin_hub_radius(field_, r_c_, r_a_, voltage_);
-        expected = kHubShareAPeriod * brillouin_charge_per_length(field_, r_c_, hub) * height *
-                   deck_.circuit.modes.back().frequency;
-    }
+    const double cap = cathode_supply(deck_);
+    if (!std::isfinite(cap) || cathode.secondary_emission) return;  // secondaries feed a cold cathode
+    const double expected = expected_current(deck_);
     if (cap >= expected) return;
-    const bool by_limit = cathode.emission_limit > 0 && density == cathode.emission_limit;
+    const double density = cap / (2 * kPi * r_c_ * deck_.tube.axial_height);
+    const bool by_limit = cathode.emission_limit > 0 && density >= cathode.emission_limit * (1 - 1e-12);
     const std::string cure =
         fmt::format("raise cathode.{} until it gives {:.3g} A/cm^2",
                     by_limit ? "emission_limit_A_per_cm2" : "temperature_K", density * expected / cap * 1e-4);

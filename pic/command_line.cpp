@@ -14,6 +14,8 @@
 #include <string>
 #include <vector>
 
+#include "diagnostics/chart_sweep.hpp"
+#include "diagnostics/chart_text.hpp"
 #include "diagnostics/summary_text.hpp"
 #include "inputs/deck_keys.hpp"
 #include "inputs/deck_reader.hpp"
@@ -112,6 +114,38 @@ int run_verb(const Verb& verb, const Arguments& arguments) {
     return outcome.signal == 0 ? 0 : 128 + outcome.signal;
 }
 
+int chart_verb(const Verb& verb, const Arguments& arguments) {
+    options::options_description named("options");
+    named.add_options()("set", options::value<Arguments>()->composing(),
+                        "section.key=value, wins over the deck; may be repeated")("json", options::bool_switch(),
+                                                                                  "the same numbers as JSON")(
+        "sweep", options::value<std::string>(),
+        "section.key=from:to:steps, the main lines at from, to and steps - 1 values between, as CSV");
+    options::variables_map values;
+    if (!parse(verb, arguments, named, "DECK", values)) {
+        return 0;
+    }
+    const auto path = values["DECK"].as<std::string>();
+    const Arguments overrides = values.count("set") > 0 ? values["set"].as<Arguments>() : Arguments{};
+    const bool json = values["json"].as<bool>();
+    if (values.count("sweep") > 0) {
+        if (json) {
+            throw InputError("chart: --json and --sweep exclude each other; give one of them");
+        }
+        std::cout << chart_csv(path, overrides, read_chart_sweep(values["sweep"].as<std::string>()));
+        return 0;
+    }
+    const Chart chart = operating_chart(read_deck(path, overrides));
+    if (json) {
+        std::cout << chart_json_text(chart);
+        return 0;
+    }
+    for (const std::string& line : chart_lines(chart)) {
+        std::cout << line << '\n';
+    }
+    return 0;
+}
+
 int keys_verb(const Verb& verb, const Arguments& arguments) {
     options::options_description named("options");
     named.add_options()("markdown", options::bool_switch(), "as a Markdown table");
@@ -122,9 +156,11 @@ int keys_verb(const Verb& verb, const Arguments& arguments) {
     return 0;
 }
 
-constexpr std::array<Verb, 2> kVerbs{{
+constexpr std::array<Verb, 3> kVerbs{{
     {"run", "run DECK --out DIR [--set section.key=value ...] [--threads n] [--resume | --replace] [--quiet]",
      "One hot run of the tube in DECK.", run_verb},
+    {"chart", "chart DECK [--set section.key=value ...] [--json | --sweep section.key=from:to:steps]",
+     "What closed forms say of the tube in DECK: cutoff, thresholds, hub, efficiency, currents.", chart_verb},
     {"keys", "keys [--markdown]", "Every deck key: unit, range, default and meaning.", keys_verb},
 }};
 

@@ -68,8 +68,8 @@ TEST_CASE("the command line: verbs and options") {
     const std::string deck = folder.write("tube.ini", kQuickTube);
     const std::string out = folder.file("out");
     const auto refused = [&](const Arguments& arguments) { return refusal(arguments, folder); };
-    CHECK(refused({}) == Refusal{2, "no verb; one of run, keys, or --help\n"});
-    CHECK(refused({"walk"}) == Refusal{2, "'walk' is no verb; one of run, keys, or --help\n"});
+    CHECK(refused({}) == Refusal{2, "no verb; one of run, chart, keys, or --help\n"});
+    CHECK(refused({"walk"}) == Refusal{2, "'walk' is no verb; one of run, chart, keys, or --help\n"});
     CHECK(refused({"run"}) == Refusal{2, "run: DECK is missing; " + kRunUsage});
     CHECK(refused({"run", "", "--out", out}) == Refusal{2, "run: DECK is missing; " + kRunUsage});
     CHECK(refused({"run", deck}) == Refusal{2, "run: --out is missing; " + kRunUsage});
