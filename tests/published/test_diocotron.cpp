@@ -25,7 +25,7 @@ struct PrintedColumn {
     std::vector<complex<double>> frequency;  // omega / omega_D for l = 2..6
 };
 
-// b = 10 mm. Computed from the formula by someone else, six figures.
+// b = 10 mm. Six figures, computed from the formula on its own.
 const PrintedColumn kThin{{2e-3, 4e-3, 5e-3, 10e-3},
                           {{0.36, 0.097140}, {0.54, 0.228504}, {0.72, 0.298827}, {0.90, 0.311722}, {1.08, 0.249420}}};
 const PrintedColumn kWide{
@@ -60,7 +60,7 @@ private:
 /// the wave itself. Much less, and the electrons of the edge notice the steps of the force from cell to cell; more, or
 /// longer, and the wave is no longer small.
 complex<double> run_frequency(const ColumnShape& shape, int l) {
-    const AnnularColumn column(shape, 0.01, {120, 384}, 60, 384);
+    const AnnularColumn column(shape, 0.01, {118, 288}, 120, 288);
     InteractionSpace space(column.deck(), 1);
     column.load(space, l, space.units().grid.dr() / shape.r2);
     const double omega_d = column.diocotron_frequency();
@@ -69,7 +69,7 @@ complex<double> run_frequency(const ColumnShape& shape, int l) {
         while (space.time() * omega_d < k * 0.125) space.step();
         fit.add(space.time() * omega_d, column.anode_harmonic(space.view(), l));
     }
-    CHECK(space.tally().electrons == 60 * 384);
+    CHECK(space.tally().electrons == 120 * 288);
     return complex<double>(0, 1) * fit.slope();
 }
 
