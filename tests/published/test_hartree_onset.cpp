@@ -40,13 +40,13 @@ bool grows(double field, double voltage) {
     return false;
 }
 
-/// Lowest voltage with growth, V, to 0.3 % of the line, between a voltage without and one with growth.
+/// Lowest voltage with growth, V, to 0.1 % of the line, between a voltage without and one with growth.
 double onset(double field) {
     const double line = hartree_line(field);
-    double below = 0.94 * line, above = 1.04 * line;
+    double below = 0.92 * line, above = 1.06 * line;
     CHECK_FALSE(grows(field, below));
     CHECK(grows(field, above));
-    for (int halving = 0; halving < 5; ++halving) {
+    for (int halving = 0; halving < 6; ++halving) {
         const double middle = 0.5 * (below + above);
         (grows(field, middle) ? above : below) = middle;
     }
