@@ -5,6 +5,7 @@
 #include <doctest/doctest.h>
 
 #include <cmath>
+#include <cstdio>
 #include <string>
 
 #include "tests/primed_tube.hpp"
@@ -23,7 +24,7 @@ double hartree_line(double field) {
     return v0 * (2 * field / b0 - 1);
 }
 
-/// Whether a mode primed to a tenth of the Hartree voltage grows by half within 36 ns; alone it would fall to 1 / e in
+/// Whether a mode primed to a tenth of the Hartree voltage grows by half within 39 ns; alone it would fall to 1 / e in
 /// 24 ns (Q_L = 182). Priming and load make a threshold of it: a wave of some volts in a lossless circuit rises a
 /// little on either side of the line, fed by the edge of the hub far from the anode, and stays small. By half, it has
 /// spokes.
@@ -35,7 +36,7 @@ bool grows(double field, double voltage) {
         if (space.time() < kPrimedRise + 2e-9) continue;
         const double grown = std::abs(mode_amplitude(space)) / deck.prime.voltage;
         if (grown > 1.5) return true;
-        if (grown < 0.3) return false;  // none came back from there
+        if (grown < 0.3) return false;  // on the line itself some recover later: 1 % of voltage
     }
     return false;
 }
