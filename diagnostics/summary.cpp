@@ -21,9 +21,9 @@ constexpr double kSpokeShare = 0.05;
 constexpr double kSpokeNoise = 3;
 // A ledger that is open by more than this is worth a word; the model's own trial closed to 0.2 %.
 constexpr double kImbalanceWarning = 0.01;
-// A mean frequency is the generator's when it agrees within its half-width and one part in a million: a beat would be
-// slower than the longest runs.
-constexpr double kLocked = 1e-6;
+// R. Adler's phase (Proc. IRE 34, 351 (1946)) drifts beside the generator's by at least 5 % of his half band wherever
+// the generator is 5 % beyond it; a slower drift is a lock, or the end of the way to one.
+constexpr double kLockedDrift = 0.05;
 // A mode that doubles its energy between neighbouring sixths and is above 1 % of the anode voltage is still starting.
 constexpr double kGrowth = 2;
 constexpr double kGrowthShare = 0.01;
@@ -43,6 +43,7 @@ private:
     void find_modes();
     void settle();
     void take_means();
+    std::vector<double> net_load_power() const;
     void describe_modes();
     void describe_drive();
     void describe_spokes();
@@ -112,7 +113,18 @@ void Summariser::take_means() {
     s_.hub_radius_mm = mean("hub_radius_mm");
     const auto input = averaged(record_.column("input_power_W"));
     s_.electronic_efficiency = batch_ratio(averaged(record_.column("mode_power_W")), input);
-    s_.total_efficiency = batch_ratio(averaged(record_.column("load_power_W")), input);
+    s_.total_efficiency = batch_ratio(net_load_power(), input);
+}
+
+/// What the tube adds to the wave that a generator sends into it, W.
+std::vector<double> Summariser::net_load_power() const {
+    const auto load = averaged(record_.column("load_power_W"));
+    std::vector<double> net(load.begin(), load.end());
+    for (std::size_t k = 0; k < net.size(); ++k) {
+        const bool driven = time_ns_[s_.averaged_from + k] * 1e-9 > deck_.drive.start;
+        if (driven) net[k] -= deck_.drive.power;  // constant over a period
+    }
+    return net;
 }
 
 void Summariser::describe_modes() {
@@ -135,9 +147,14 @@ void Summariser::describe_drive() {
     if (deck_.drive.power <= 0) return;
     s_.drive_power_W = deck_.drive.power;
     s_.drive_frequency_GHz = deck_.drive.frequency * 1e-9;
-    const double off = std::abs(s_.frequency_GHz.mean - s_.drive_frequency_GHz);
-    s_.locked =
-        s_.dominant_mode == deck_.drive.mode && off <= s_.frequency_GHz.half_width + kLocked * s_.drive_frequency_GHz;
+    if (s_.dominant_mode != deck_.drive.mode || s_.averaged_from >= s_.averaged_to) return;
+    const auto mode = std::ranges::find(deck_.circuit.modes, deck_.drive.mode, &ModeEntry::number);
+    const double half_band =
+        mode->frequency * 1e-9 / mode->external_q * std::sqrt(deck_.drive.power / s_.load_power_W.mean);
+    // The later half of the averaged part: the earlier one may hold the way to the lock.
+    const auto frequency = averaged(record_.mode_column(mode->number, "frequency_GHz"));
+    const double drift = batch_mean(frequency.last((frequency.size() + 1) / 2)).mean - s_.drive_frequency_GHz;
+    s_.locked = std::abs(drift) < kLockedDrift * half_band;
 }
 
 void Summariser::describe_spokes() {

@@ -56,7 +56,8 @@ struct Summary {
     MeanWithError hub_radius_mm, frequency_GHz = kUndefinedMean, frequency_shift_MHz = kUndefinedMean;
     double drive_power_W = 0;  // of a generator at drive_frequency_GHz, 0 without
     double drive_frequency_GHz = kUndefined;
-    bool locked = false;  // the driven mode runs at the generator's frequency
+    bool locked =
+        false;  // at the end the driven mode runs at the generator's frequency, to 5 % of the locking half band
     std::vector<ModeSummary> modes;
     std::vector<ModeEvent> mode_events;
     double energy_imbalance = kUndefined;  // the worse of the whole run and the averaged part

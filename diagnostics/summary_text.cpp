@@ -239,8 +239,8 @@ std::vector<std::string> summary_lines(const Summary& s) {
     add("spokes", spoke_text(s));
     add("frequency", frequency_text(s));
     if (s.drive_power_W > 0) {
-        add("generator", fmt::format("{} at {:.6g} GHz {} the tube", quantity(s.drive_power_W, "W"),
-                                     s.drive_frequency_GHz, s.locked ? "locks" : "does not lock"));
+        add("generator", fmt::format("{} at {:.6g} GHz; the tube {} to it", quantity(s.drive_power_W, "W"),
+                                     s.drive_frequency_GHz, s.locked ? "has locked" : "has not locked"));
     }
     add("heat", heat_text(s));
     add("cathode", fmt::format("emits {}, takes back {}", quantity(s.emitted_current_A.mean, "A"),

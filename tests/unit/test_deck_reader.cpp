@@ -27,10 +27,11 @@ TEST_CASE("a deck is read in SI units") {
 }
 
 TEST_CASE("every unit factor of the optional keys") {
-    const Deck deck = read_text(kSmallDeck, {"supply.shunt_capacitance_pF=7", "cathode.richardson_A_per_cm2_K2=60",
-                                             "cathode.emission_limit_A_per_cm2=5", "load.phase_deg=90",
-                                             "clock.step_ps=1.5", "clock.end_time_ns=30", "output.checkpoint_minutes=2",
-                                             "output.snapshot_times_ns=1, 2 3", "supply.programme=0:0.5,10:1 20:0"});
+    const Deck deck = read_text(
+        kSmallDeck,
+        {"supply.shunt_capacitance_pF=7", "cathode.richardson_A_per_cm2_K2=60", "cathode.emission_limit_A_per_cm2=5",
+         "load.phase_deg=90", "drive.phase_deg=45", "drive.start_ns=3", "clock.step_ps=1.5", "clock.end_time_ns=30",
+         "output.checkpoint_minutes=2", "output.snapshot_times_ns=1, 2 3", "supply.programme=0:0.5,10:1 20:0"});
     CHECK(relative_error(deck.supply.shunt_capacitance, 7e-12) < kRounding);
     CHECK(relative_error(deck.cathode.richardson_constant, 60e4) < kRounding);
     CHECK(relative_error(deck.cathode.emission_limit, 5e4) < kRounding);
@@ -38,6 +39,8 @@ TEST_CASE("every unit factor of the optional keys") {
     CHECK(relative_error(deck.clock.step, 1.5e-12) < kRounding);
     CHECK(relative_error(deck.clock.end_time, 30e-9) < kRounding);
     CHECK(deck.output.checkpoint_interval == 120);
+    CHECK(relative_error(deck.drive.phase, kPi / 4) < kRounding);
+    CHECK(relative_error(deck.drive.start, 3e-9) < kRounding);
     REQUIRE(deck.output.snapshot_times.size() == 3);
     CHECK(relative_error(deck.output.snapshot_times[2], 3e-9) < kRounding);
     REQUIRE(deck.supply.programme.size() == 3);

@@ -129,6 +129,8 @@ TEST_CASE("a generator wants a mode of the table, near its frequency, and a matc
     const Deck deck = read_text(kSmallDeck + kCircuit, {"drive.available_power_W=10"});
     CHECK(deck.drive.mode == 5);
     CHECK(relative_error(deck.drive.frequency, 2.45e9) < kRounding);
+    CHECK(deck.drive.power == 10);
+    CHECK(relative_error(read_text(kSmallDeck, {"drive.frequency_GHz=2.5"}).drive.frequency, 2.5e9) < kRounding);
     CHECK(override_message("drive.mode=6") ==
           "--set drive.mode=6: drive.mode: mode 6 of 10 vanes; allowed: mode numbers 1..5");
     CHECK(message_of(kSmallDeck + kCircuit, {"drive.mode=4", "drive.available_power_W=5"}) ==

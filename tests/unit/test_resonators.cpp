@@ -186,6 +186,27 @@ TEST_CASE("a driven resonator stands at the phasor of the parallel circuit, at a
         const std::complex<double> expected = std::sqrt(8 * pi_mode.load_conductance * power) / y;  // at a whole period
         const double scale = std::abs(expected);
         CHECK(std::abs(pi_mode.voltage - expected.real()) < 2e-3 * scale);  // (omega dt)^2 / 12 = 2e-5, times Q_L
+        for (int k = 0; k < 100; ++k) bank.advance(std::vector<double>(5, 0.0), k * dt);  // a quarter period on
+        CHECK(std::abs(pi_mode.voltage + expected.imag()) < 2e-3 * scale);
+    }
+}
+
+TEST_CASE("a cold cavity throws back ((beta - 1) / (beta + 1))^2 of a resonant wave, beta = Q_0 / Q_ext") {
+    for (const int mode : {4, 5}) {
+        for (const double external_q : {50.0, 100.0, 300.0}) {
+            const double frequency = mode == 4 ? 2.8e9 : 2.45e9, dt = 1 / frequency / 200, power = 25;
+            Resonators bank(circuit(100, external_q), {}, 10, dt, {mode, power, frequency, 0.3, 0});
+            double load = 0, wall = 0;
+            for (int k = 0; k < 200 * 400; ++k) {  // 400 periods, at least ten fill times of the energy
+                const ResonatorEnergy energy = bank.advance(std::vector<double>(5, 0.0), k * dt);
+                if (k < 200 * 399) continue;
+                load += energy.load;
+                wall += energy.wall_loss;
+            }
+            const double beta = 100 / external_q, back = std::pow((beta - 1) / (beta + 1), 2);
+            CHECK(std::abs(load * frequency / power - back) < 1e-6);  // the start is e^-16 by then
+            CHECK(std::abs(wall * frequency / power - (1 - back)) < 1e-6);
+        }
     }
 }
 

@@ -14,7 +14,8 @@ namespace {
 constexpr int kSteps = 2000;
 
 Deck heating_tube() {
-    return read_deck(SPOKEWRIGHT_SOURCE_DIR "/inputs/tubes/heating.ini", {"magnet.self_field=yes"});
+    return read_deck(SPOKEWRIGHT_SOURCE_DIR "/inputs/tubes/heating.ini",
+                     {"magnet.self_field=yes", "drive.available_power_W=1000"});
 }
 
 std::string hash_of(const InteractionSpace& space) {

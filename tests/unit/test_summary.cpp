@@ -177,6 +177,31 @@ TEST_CASE("no record, or a run that never reached its voltage, is not settled an
     CHECK(summary_json(none)["anode_current_A"].is_null());
 }
 
+TEST_CASE("a tube has locked when its mode keeps the generator's frequency to 5 % of Adler's half band") {
+    // 34.02 W beside 3402 W to the load, Q_ext 150 at 2.45 GHz: a half band of 1.633 MHz, 5 % of it is 0.082 MHz.
+    const auto driven = [](int mode, double offset) {
+        PlayedRun run = locked_run();  // its mode 5 stands at 2.449 GHz
+        run.deck.drive = {mode, 34.02, 2.449e9 + offset, 0, 0};
+        return summary_of(run);
+    };
+    for (const double offset : {0.0, 0.07e6, -0.07e6}) CHECK(driven(5, offset).locked);
+    for (const double offset : {0.1e6, -0.1e6, 5e6}) CHECK_FALSE(driven(5, offset).locked);
+    CHECK_FALSE(driven(4, 0).locked);  // the generator is at another mode than the one that runs
+    CHECK(relative_error(driven(5, 0).drive_frequency_GHz, 2.449) < 1e-12);
+    CHECK(driven(5, 0).drive_power_W == 34.02);
+    PlayedRun free = locked_run();
+    CHECK_FALSE(summary_of(free).locked);
+}
+
+TEST_CASE("the generator's own power is none of the tube's efficiency") {
+    PlayedRun run = locked_run();
+    run.deck.drive = {5, 63, 2.449e9, 0, 0};
+    CHECK(relative_error(summary_of(run).total_efficiency.mean, 0.54 - 0.01) < kMeanError);
+    PlayedRun later = locked_run();
+    later.deck.drive = {5, 63, 2.449e9, 0, 1};
+    CHECK(relative_error(summary_of(later).total_efficiency.mean, 0.54) < 1e-9);  // a generator still switched off
+}
+
 TEST_CASE("open books are warned of") {
     PlayedRun run = locked_run();
     run.lost_energy = 0.02;
