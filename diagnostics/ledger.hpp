@@ -1,7 +1,8 @@
 // SPDX-License-Identifier: MIT
-// Does the energy add up, and the charge? In: supply, priming, kinetic energy of the emitted. Out: walls, load, heat of
-// anode and cathode. Stored: electrons in motion, space-charge field, resonators. The anode voltage's own static field
-// is on neither side: the supply column holds only what it gives to the electrons.
+// Does the energy add up, and the charge? In: supply, priming, a generator's wave, kinetic energy of the emitted. Out:
+// walls, load (the generator's reflected wave included), heat of anode and cathode. Stored: electrons in motion,
+// space-charge field, resonators. The anode voltage's own static field is on neither side: the supply column holds only
+// what it gives to the electrons.
 #pragma once
 
 #include <cstddef>

@@ -36,7 +36,7 @@ void add_interval_columns(Columns& columns) {
     add("input_power_W", "W", "from the supply to the electrons, mean since the last sample");
     add("mode_power_W", "W", "from the electrons to the resonators, mean since the last sample");
     add("wall_loss_W", "W", "lost in the resonators' walls, mean since the last sample");
-    add("load_power_W", "W", "into the load, mean since the last sample");
+    add("load_power_W", "W", "out to the load, a generator's reflected wave included, mean since the last sample");
     add("anode_heat_W", "W", "kinetic energy left on the anode, mean since the last sample");
     add("cathode_heat_W", "W", "kinetic energy left on the cathode (back bombardment), mean since the last sample");
     add("electrons", "1", "macro-electrons in flight");
