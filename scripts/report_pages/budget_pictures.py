@@ -1,5 +1,5 @@
 # SPDX-License-Identifier: MIT
-"""Where the power of the supply goes."""
+"""Where the power of the supply, and of a generator, goes."""
 import numpy as np
 
 from .looks import METAL_EDGE, NAVY, OCHRE, PLUM, RUST, SLATE, TEAL, WIDTH, Picture, finish, plt, prefix_for
@@ -13,12 +13,18 @@ def parts_of_the_input(run):
              ("cathode heat", run.mean("cathode_heat_W"), PLUM)]
     if not run.has_modes:
         parts = parts[2:]
-    return parts + [("open remainder", run.mean("input_power_W") - sum(part[1] for part in parts), SLATE)]
+    return parts + [("open remainder", input_power(run) - sum(part[1] for part in parts), SLATE)]
+
+
+def input_power(run):
+    """Of the supply, and of the wave that a generator sends in, W."""
+    return run.mean("input_power_W") + run.summary["drive_power_W"]
 
 
 def power_budget(run):
     name, title = "power_budget", "Where the power goes"
-    supply = run.mean("input_power_W")
+    supply = input_power(run)
+    driven = run.summary["drive_power_W"] > 0
     if not (np.isfinite(supply) and supply > 0):
         return Picture(name, title, "In the averaged part the supply gave no power on balance, so that it cannot be "
                                     "shared out.")
@@ -27,7 +33,7 @@ def power_budget(run):
     figure, axes = plt.subplots(figsize=(WIDTH, 0.9 + 0.3 * (len(parts) + 1)))
     axes.barh(0, supply / factor, 0.62, color=NAVY)
     start, highest, lowest = 0.0, supply, 0.0
-    rows = [("from the supply", supply, 0.0)]
+    rows = [("from supply and generator" if driven else "from the supply", supply, 0.0)]
     for k, (word, watts, colour) in enumerate(parts, 1):
         axes.barh(k, watts / factor, 0.62, left=start / factor, color=colour)
         axes.plot([start / factor] * 2, [k - 0.69, k + 0.31], color=METAL_EDGE, lw=0.7)

@@ -18,7 +18,7 @@ _NEEDED_IN_SUMMARY = (
     "program version deck_sha256 seed status settled_from_ns averaged_from_ns averaged_to_ns end_time_ns early_end "
     "anode_voltage_V anode_current_A emitted_current_A cathode_return_current_A input_power_W rf_power_W load_power_W wall_loss_W anode_heat_W "
     "cathode_heat_W electronic_efficiency total_efficiency dominant_mode spoke_count spoke_strength hub_radius_mm "
-    "frequency_GHz frequency_shift_MHz modes mode_events energy_imbalance charge_imbalance_C hull_voltage_V "
+    "frequency_GHz frequency_shift_MHz drive_power_W modes mode_events energy_imbalance charge_imbalance_C hull_voltage_V "
     "hartree_voltage_V electrons steps wall_clock_s ns_per_electron_step warnings").split()
 _NEEDED_SERIES = (
     "time_ns anode_voltage_V anode_current_A emitted_current_A cathode_return_current_A input_power_W mode_power_W "

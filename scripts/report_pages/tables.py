@@ -33,6 +33,7 @@ _GROUPS = (
     ("Power", (
         ("input_power_W", "Power from the supply", "W"),
         ("rf_power_W", "Radio-frequency power, electrons to resonators", "W"),
+        ("drive_power_W", "Power that a generator sends in", "W"),
         ("load_power_W", "Power to the load", "W"),
         ("wall_loss_W", "Loss in the resonators' walls", "W"),
         ("electronic_efficiency", "Electronic efficiency, radio-frequency power over input", "%"),
